@@ -1,6 +1,12 @@
 // Package fermi answers for the electrons of a finite chain: chemical
 // potential, site densities, bond orders, energies, levels. It is the only
 // room that knows how H is solved.
+//
+// Small chains are diagonalised. Longer ones are never: the occupied states
+// enter only through the diagonal and the first off-diagonal of the density
+// matrix ρ = f(H), and those follow at a cost linear in the length from a
+// handful of inverses (μ + i s − H)⁻¹. Levels next to the Fermi energy are
+// found by counting how many levels lie below an energy.
 package fermi
 
 // Hamiltonian is the one-electron matrix of a finite chain,
@@ -27,7 +33,7 @@ type Occupation struct {
 
 // State is what the electrons do. All sums include the spin states.
 type State struct {
-	ChemicalPotential float64
+	ChemicalPotential float64 // at T = 0 the middle of the gap or the partly filled level; the band edge of an empty or full band
 	Highest, Lowest   float64 // highest occupied and lowest unoccupied level (by counting, at any T); ±Inf where there is none
 	OpenShell         bool    // the level at E_F is only partly filled (then Highest == Lowest)
 

@@ -1,8 +1,33 @@
 // Package relax finds the lattice that minimises the free energy of electrons
-// plus springs.
+// plus springs at a fixed number of electrons,
+//
+//	F[b, q] = F_el(N_e, T; t − α b, g q) + (K/2) Σ b² + (K_s/2) Σ q²,
+//
+// over all stretches b and local modes q of zero sum (a ring cannot stretch as
+// a whole, an open chain is held at its length, and the uniform local mode is
+// left out of every energy). Its stationary points obey
+//
+//	b_i = −(α/K)(p_i − p̄),   q_i = −(g/K_s)(n_i − n̄),
+//
+// with p the bond order and n the density, spins summed (W. P. Su, J. R.
+// Schrieffer, A. J. Heeger, Phys. Rev. B 22, 2099 (1980); T. Holstein, Ann.
+// Phys. 8, 325 (1959)).
+//
+// A small residual does not prove a ground state: the undistorted chain is
+// stationary too. So several starts are relaxed, the lowest is kept, and its
+// curvature along the 2kF patterns is tested.
 package relax
 
-import "example.org/twokf/model/fermi"
+import (
+	"context"
+	"fmt"
+	"math"
+	"runtime/debug"
+	"sync"
+
+	"example.org/twokf/model"
+	"example.org/twokf/model/fermi"
+)
 
 // Lattice is a relaxed chain. Slices are never changed once it is published.
 type Lattice struct {
@@ -16,20 +41,251 @@ type Lattice struct {
 	LatticeEnergy float64 // springs alone, whole chain
 	Undistorted   float64 // free energy of the same chain with b = q = 0
 
-	Residual   float64 // largest force left, in energy per unit of displacement
+	Residual   float64 // largest |(K/α) b_i + p_i − p̄| or |(K_s/g) q_i + n_i − n̄|: a bond order or a density
 	Tolerance  float64 // what Residual was held against
 	Converged  bool
-	Iterations int
+	Iterations int     // of the start that won
+	Curvature  float64 // lowest second derivative along the 2kF patterns, the bare spring being 1; negative: not a minimum
 
-	Start string  // which start led here
-	Tried []Start // every start and where it ended
+	Start string    // which start led here
+	Tried []Attempt // every start and where it ended
 }
 
-// Start is one attempt and its outcome.
-type Start struct {
+// Attempt is one start and its outcome.
+type Attempt struct {
 	Name       string
 	FreeEnergy float64
 	Residual   float64
 	Converged  bool
 	Iterations int
+}
+
+// Settings adjusts a relaxation. The zero value asks for the defaults.
+type Settings struct {
+	Tolerance     float64        // on Residual; 0 means 1e-9, about ten times what the electrons are solved to
+	MaxIterations int            // per start; 0 means 1000
+	Starts        []Seed         // nil means Seeds(c)
+	Previous      *Lattice       // tried as one more start when its shape fits
+	Jobs          int            // starts relaxed side by side; 0 or 1 means one after the other
+	Progress      func(Progress) // if not nil, called now and then, never concurrently
+}
+
+// Progress tells how far a relaxation is.
+type Progress struct {
+	Start            string
+	Finished, Starts int     // starts done, starts in all
+	Iteration        int     // of the start under way
+	Residual         float64 // now
+	Tolerance        float64 // wanted
+}
+
+const (
+	defaultTolerance     = 1e-9
+	defaultMaxIterations = 1000
+
+	// tieEnergy is the free energy per site, in units of the band scale, below
+	// which two ends count as the same energy: the electron solver's rounding.
+	tieEnergy = 1e-12
+	// saddleCurvature, in units of the bare spring, is well above the
+	// finite-difference noise of the curvature test and far below any real
+	// instability (−λ times a logarithm).
+	saddleCurvature = -1e-5
+)
+
+// Run relaxes the chain from every start and returns the lowest end. A chain
+// without coupling comes back undistorted and converged. The error is the
+// context's, or the electron solver's; a relaxation that merely did not
+// converge is no error but Lattice.Converged == false.
+func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
+	if set.Tolerance == 0 {
+		set.Tolerance = defaultTolerance
+	}
+	if set.MaxIterations == 0 {
+		set.MaxIterations = defaultMaxIterations
+	}
+	p := newProblem(c)
+	uniform := newPath(p, "undistorted")
+	if err := uniform.evaluate(ctx, make([]float64, p.size())); err != nil {
+		return nil, err
+	}
+	undistorted := uniform.free
+	if p.size() == 0 {
+		if err := uniform.finish(ctx); err != nil {
+			return nil, err
+		}
+		return uniform.lattice(undistorted, set.Tolerance), nil
+	}
+
+	starts := set.Starts
+	if starts == nil {
+		starts = Seeds(c)
+	}
+	if prev := set.Previous; prev != nil && p.fits(prev) {
+		starts = append([]Seed{{Name: "previous", Stretch: prev.Stretch, SiteMode: prev.SiteMode}}, starts...)
+	}
+	paths, err := p.relaxAll(ctx, starts, set)
+	if err != nil {
+		return nil, err
+	}
+
+	best := lowest(append(paths, uniform), p)
+	if err := best.testCurvature(ctx); err != nil {
+		return nil, err
+	}
+	for try := 0; best.curvature < saddleCurvature && try < 2; try++ {
+		down, err := best.offSaddle(ctx)
+		if err == nil {
+			err = down.minimise(ctx, set, nil)
+		}
+		if err != nil {
+			return nil, err
+		}
+		paths = append(paths, down)
+		if best = lowest([]*path{down, best}, p); best != down {
+			break
+		}
+		if err := best.testCurvature(ctx); err != nil {
+			return nil, err
+		}
+	}
+
+	if err := best.finish(ctx); err != nil {
+		return nil, err
+	}
+	l := best.lattice(undistorted, set.Tolerance)
+	for _, one := range paths {
+		l.Tried = append(l.Tried, Attempt{one.name, one.free, one.residual, one.residual <= set.Tolerance, one.iterations})
+	}
+	return l, nil
+}
+
+// relaxAll relaxes every start, Jobs at a time, and returns the ends in the
+// order of the starts whatever finished first.
+func (p *problem) relaxAll(ctx context.Context, starts []Seed, set Settings) ([]*path, error) {
+	var (
+		lock     sync.Mutex
+		finished int
+		wait     sync.WaitGroup
+		paths    = make([]*path, len(starts))
+		errs     = make([]error, len(starts))
+		seats    = make(chan struct{}, max(1, set.Jobs))
+	)
+	ctx, cancel := context.WithCancel(ctx)
+	defer cancel()
+	report := func(one *path) {
+		if set.Progress == nil {
+			return
+		}
+		lock.Lock()
+		defer lock.Unlock()
+		set.Progress(Progress{one.name, finished, len(starts), one.iterations, one.residual, set.Tolerance})
+	}
+	for i, seed := range starts {
+		paths[i] = newPath(p, seed.Name)
+		seats <- struct{}{}
+		wait.Add(1)
+		go func() {
+			defer wait.Done()
+			defer func() { <-seats }()
+			defer func() {
+				if r := recover(); r != nil { // a panic in here would leave the user's terminal raw
+					errs[i] = fmt.Errorf("relax: start %q: %v\n%s", seed.Name, r, debug.Stack())
+					cancel()
+				}
+			}()
+			if errs[i] = paths[i].evaluate(ctx, p.vector(seed)); errs[i] == nil {
+				errs[i] = paths[i].minimise(ctx, set, report)
+			}
+			if errs[i] != nil {
+				cancel()
+			}
+			lock.Lock()
+			finished++
+			lock.Unlock()
+		}()
+	}
+	wait.Wait()
+	var first error
+	for _, err := range errs {
+		if err != nil && (first == nil || first == context.Canceled) {
+			first = err
+		}
+	}
+	return paths, first
+}
+
+// lowest picks the end of lowest free energy. Ends that are equal to rounding
+// are settled in favour of the undistorted chain, then of the earlier start.
+func lowest(paths []*path, p *problem) *path {
+	tie := tieEnergy * p.scale() * float64(p.sites)
+	best := paths[0]
+	for _, one := range paths[1:] {
+		switch gain := best.free - one.free; {
+		case gain > tie:
+			best = one
+		case gain > -tie && one.name == "undistorted" && !(best.residual < one.residual/2):
+			best = one
+		}
+	}
+	return best
+}
+
+// finish solves for the electrons once more, gap edges and all.
+func (one *path) finish(ctx context.Context) error {
+	one.solver.RoughEdges = false
+	return one.evaluate(ctx, append([]float64(nil), one.x...))
+}
+
+// fits reports whether a lattice has the shape of this problem.
+func (p *problem) fits(l *Lattice) bool {
+	return len(l.Stretch) == p.bonds && len(l.SiteMode) == p.modes
+}
+
+// lattice freezes the end of a path.
+func (one *path) lattice(undistorted, tolerance float64) *Lattice {
+	p := one.problem
+	l := &Lattice{
+		Electrons:     one.electrons,
+		FreeEnergy:    one.free,
+		LatticeEnergy: one.springs,
+		Undistorted:   undistorted,
+		Residual:      one.residual,
+		Tolerance:     tolerance,
+		Converged:     one.residual <= tolerance,
+		Iterations:    one.iterations,
+		Curvature:     one.curvature,
+		Start:         one.name,
+	}
+	if p.size() == 0 {
+		l.Curvature = 1
+	}
+	l.Stretch, l.SiteMode = p.patterns(one.x)
+	if l.Stretch != nil {
+		l.Displacement = displacement(l.Stretch, p.sites)
+	}
+	return l
+}
+
+// displacement sums the stretches up to positions of zero mean.
+func displacement(stretch []float64, sites int) []float64 {
+	u := make([]float64, sites)
+	var mean float64
+	for i := 1; i < sites; i++ {
+		u[i] = u[i-1] + stretch[i-1]
+		mean += u[i]
+	}
+	mean /= float64(sites)
+	for i := range u {
+		u[i] -= mean
+	}
+	return u
+}
+
+// maxAbs returns the largest magnitude in x, 0 for none.
+func maxAbs(x []float64) float64 {
+	m := 0.0
+	for _, v := range x {
+		m = math.Max(m, math.Abs(v))
+	}
+	return m
 }

@@ -1,5 +1,3 @@
-// Package study asks the whole question: one Chain in, one Portrait out, in
-// stages that publish as they finish and can be cancelled.
 package study
 
 import (
@@ -28,6 +26,8 @@ type Portrait struct {
 	Troubles []Trouble // stages that could not be done, and why
 	Seconds  float64   // time spent so far, without the reused parts
 	Complete bool      // every stage has finished
+
+	finished map[string]bool // stages that have run, well or badly
 }
 
 // Trouble is a stage that failed, in words for the user.

@@ -1,0 +1,46 @@
+package fermi
+
+import "math"
+
+// poleTolerance is the largest error of the occupation f(ε) of any level. Bond
+// orders and densities inherit it as a bound, energies to its square root of
+// terms; ten poles more or less are 1e-10 more or less.
+const poleTolerance = 1e-12
+
+// poles stand for an occupation as a sum over poles on the line μ ± i s_p,
+//
+//	f(x) = ½ − ½ x Σ_p a_p/(x² + s_p²),   x = ε − μ,
+//
+// so that ρ = f(H) = ½ + ½ Σ_p a_p Re (μ + i s_p − H)⁻¹. The grand potential of
+// one level, of which f is the derivative, is
+//
+//	ω(x) = ½ x − ¼ Σ_p a_p ln(x² + s_p²) − C.
+type poles struct {
+	weight, shift []float64 // a_p, s_p > 0
+	constant      float64   // C
+	inner, outer  float64   // good for inner ≤ |x| ≤ outer
+}
+
+// odd returns x Σ_p a_p/(x² + s_p²) = 1 − 2 f(x).
+func (p *poles) odd(x float64) float64 {
+	var sum float64
+	for k, a := range p.weight {
+		sum += a / (x*x + p.shift[k]*p.shift[k])
+	}
+	return x * sum
+}
+
+// match chooses the constant C so that ω follows exact on the average over the
+// range in which levels may lie.
+func (p *poles) match(exact func(x float64) float64) {
+	const points = 16
+	p.constant = 0
+	for j := range points {
+		x := p.inner + (p.outer-p.inner)*(float64(j)+0.5)/points
+		w := 0.5*x - exact(x)
+		for k, a := range p.weight {
+			w -= 0.25 * a * math.Log(x*x+p.shift[k]*p.shift[k])
+		}
+		p.constant += w / points
+	}
+}

@@ -1,0 +1,139 @@
+package fermi
+
+import (
+	"context"
+	"fmt"
+	"math"
+)
+
+// warm is what is kept for electrons at T > 0.
+type warm struct {
+	poles  poles
+	trials [2]trial
+	key    warmKey // what the following belong to
+	mu     float64 // the last chemical potential
+	slope  float64 // and dN/dμ per spin
+}
+
+type warmKey struct {
+	sites                int
+	perSpin, temperature float64
+}
+
+// A trial is what the electrons do at some chemical potential.
+type trial struct {
+	mu, excess    float64 // excess is Σ f − n per spin
+	omega, order  float64 // grand potential per spin; Σ_i ⟨c†_{i+2}c_i + h.c.⟩, all spins
+	density, bond []float64
+}
+
+// solveWarm finds the chemical potential by interpolating the number of
+// electrons between trials. Densities are interpolated between the last two
+// trials too, which makes the number exact; their error is of second order.
+// The free energy Ω + μN is stationary in μ.
+func (p *poleSolver) solveWarm(ctx context.Context, h *Hamiltonian, spin, perSpin, temperature float64, st *State) error {
+	const most = 100
+	w := &p.warm
+	size := float64(len(h.Site))
+	key := warmKey{len(h.Site), perSpin, temperature}
+	if w.key != key {
+		w.poles.weight = w.poles.weight[:0]
+		w.mu, w.slope = st.ChemicalPotential, 0
+	}
+	shift := temperature * math.Log((size-perSpin)/perSpin) // every level at ε is filled n/N at μ = ε − shift
+	r := root{lo: p.gap.lo - shift, hi: p.gap.hi - shift, slope: w.slope}
+	enough := max(1e-13*min(perSpin, size-perSpin), 4e-16*size)
+	before, now := &w.trials[0], &w.trials[1]
+	mu := min(max(w.mu, r.lo), r.hi)
+	for range most {
+		if err := p.try(ctx, h, mu, spin, key, before); err != nil {
+			return err
+		}
+		before, now = now, before
+		r.learn(mu, now.excess)
+		if r.slope == 0 {
+			r.slope = p.firstSlope(now.excess, key, st)
+		}
+		exact := math.Abs(now.excess) <= enough
+		// Interpolating between the two leaves |N″|δδ′/2N′², where N″ ≲ N′/T.
+		close := r.known > 1 && math.Abs(now.excess*before.excess) <= 2e-13*size*temperature*r.slope
+		if exact || close || r.stuck() {
+			if exact || r.known == 1 {
+				before = now
+			}
+			p.blend(h, spin, key, before, now, st)
+			w.key, w.mu, w.slope = key, st.ChemicalPotential, r.slope
+			return nil
+		}
+		mu = r.next()
+	}
+	return fmt.Errorf("%w: no chemical potential between %g and %g gives %g electrons per spin at temperature %g", errUnresolved, r.lo, r.hi, perSpin, temperature)
+}
+
+// firstSlope guesses dN/dμ: so that the step is half of T when the number of
+// electrons excited across a gap decides, else as for an even band.
+func (p *poleSolver) firstSlope(excess float64, key warmKey, st *State) float64 {
+	if st.Lowest-st.Highest > 8*key.temperature {
+		return 2 * math.Abs(excess) / key.temperature
+	}
+	filling := key.perSpin / float64(key.sites)
+	return key.perSpin * (1 - filling) / (key.temperature + (p.gap.hi-p.gap.lo)/4)
+}
+
+// try stores what the electrons do at mu.
+func (p *poleSolver) try(ctx context.Context, h *Hamiltonian, mu, spin float64, key warmKey, t *trial) error {
+	f := &p.warm.poles
+	M := max(p.gap.hi-mu, mu-p.gap.lo)
+	if len(f.weight) == 0 || f.outer < M || wasteful*f.outer > M {
+		if !f.fermiDirac(key.temperature, roomy*M, poleTolerance) {
+			return fmt.Errorf("%w: temperature %g cannot be resolved in a band of width %g", errUnresolved, key.temperature, p.gap.hi-p.gap.lo)
+		}
+	}
+	t.mu = mu
+	t.density, t.bond = resize(t.density, len(h.Site)), resize(t.bond, len(h.Bond))
+	clear(t.density)
+	clear(t.bond)
+	var err error
+	t.omega, err = p.sum(ctx, h, f, mu, spin, t.density, t.bond)
+	t.order = p.sweep.order
+	t.excess = -key.perSpin
+	for _, n := range t.density {
+		t.excess += n / spin
+	}
+	return err
+}
+
+// roomy is the room left in the range of thermal poles, which take milliseconds
+// to make.
+const roomy = 1.1
+
+// blend stores the state at the chemical potential where the excess, taken as
+// linear between two trials (or one twice), vanishes.
+func (p *poleSolver) blend(h *Hamiltonian, spin float64, key warmKey, before, now *trial, st *State) {
+	x := 0.0 // part of the trial before
+	if d := now.excess - before.excess; d != 0 {
+		x = now.excess / d
+	}
+	var energy float64
+	for i, n := range now.density {
+		n += x * (before.density[i] - n)
+		st.Density[i] = n
+		energy += h.Site[i] * n
+	}
+	for i, b := range now.bond {
+		b += x * (before.bond[i] - b)
+		st.BondOrder[i] = b
+		energy -= h.Bond[i] * b
+	}
+	energy -= h.Next * (now.order + x*(before.order-now.order))
+	st.ChemicalPotential = now.mu + x*(before.mu-now.mu)
+	st.Energy = energy
+	best := now
+	if math.Abs(before.excess) < math.Abs(now.excess) {
+		best = before
+	}
+	// d(Ω + μn)/dμ = −excess, linear up to the answer.
+	rest := best.excess / 2 * (st.ChemicalPotential - best.mu)
+	st.FreeEnergy = spin * (best.omega + best.mu*key.perSpin - rest)
+	st.Entropy = max(0, (energy-st.FreeEnergy)/key.temperature)
+}

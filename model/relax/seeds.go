@@ -1,0 +1,119 @@
+package relax
+
+import (
+	"math"
+	"math/rand/v2"
+
+	"example.org/twokf/model"
+)
+
+// Seed is a lattice to start from. A nil pattern is an undistorted branch.
+type Seed struct {
+	Name     string
+	Stretch  []float64 // b_i, as Lattice.Stretch
+	SiteMode []float64 // q_i, as Lattice.SiteMode
+}
+
+const (
+	// seedGap is the half gap that a seed opens, in units of the hopping: large
+	// enough to be past the flat top of the energy, small enough that no hopping
+	// changes sign. The end does not depend on it.
+	seedGap = 0.3
+	// dentWidth, in units of the coherence length 2t/Δ of the seed's gap, is the
+	// width of a dent that an extra electron may settle into.
+	dentWidth = 1.0
+	// largestPeriod of the commensurate patterns that are tried beside 2kF.
+	largestPeriod = 4
+)
+
+// Seeds returns the starts of a chain: 2kF patterns of two phases, a
+// neighbouring commensurate pattern with a dent (where an extra electron makes
+// a polaron or a kink), one branch at a time where both are coupled, and a
+// random pattern. The wave vector is that of the electrons on the chain.
+func Seeds(c model.Chain) []Seed {
+	n, _ := c.Count()
+	if c.Sites < 2 || n == 0 || n == c.Spin*c.Sites {
+		return nil // nothing to modulate
+	}
+	q := 2 * math.Pi * float64(n) / float64(c.Spin*c.Sites)
+	s := sower{chain: c, middle: float64(c.Sites / 2)}
+
+	seeds := []Seed{s.wave("2kF", q, 0, 1, 1)}
+	if math.Abs(math.Sin(q)) > 1e-9 { // at Q = π the shifted wave is zero or the same
+		seeds = append(seeds, s.wave("2kF shifted", q, q/2, 1, 1))
+	}
+	if c.Bond.Active() && c.Site.Active() {
+		seeds = append(seeds, s.wave("2kF bonds", q, 0, 1, 0.02), s.wave("2kF sites", q, 0, 0.02, 1))
+	}
+	if near := commensurate(q); near != q && math.Abs(near-q)*float64(c.Sites) < 4*2*math.Pi {
+		seeds = append(seeds, s.dented("commensurate", near))
+	}
+	return append(seeds, s.random("random"))
+}
+
+// commensurate returns the wave vector 2πp/m, m ≤ largestPeriod, nearest to q.
+func commensurate(q float64) float64 {
+	best := math.Inf(1)
+	for m := 2; m <= largestPeriod; m++ {
+		for p := 1; p < m; p++ {
+			if near := 2 * math.Pi * float64(p) / float64(m); math.Abs(near-q) < math.Abs(best-q)-1e-12 {
+				best = near
+			}
+		}
+	}
+	if math.Abs(best-q) < 1e-9 {
+		return q
+	}
+	return best
+}
+
+// sower makes patterns for one chain, in phase at the middle of the chain so
+// that the seam of a ring falls on its ends.
+type sower struct {
+	chain  model.Chain
+	middle float64
+}
+
+func (s sower) wave(name string, q, phase, bonds, sites float64) Seed {
+	return s.pattern(name, bonds, sites, func(i float64) float64 { return math.Cos(q*(i-s.middle) + phase) })
+}
+
+// dented is a wave whose amplitude changes sign twice in the middle.
+func (s sower) dented(name string, q float64) Seed {
+	width := dentWidth / seedGap
+	return s.pattern(name, 1, 1, func(i float64) float64 {
+		sech := 1 / math.Cosh((i-s.middle)/width)
+		return math.Cos(q*(i-s.middle)) * (1 - 1.2*sech*sech)
+	})
+}
+
+func (s sower) random(name string) Seed {
+	r := rand.New(rand.NewPCG(2, uint64(s.chain.Sites))) // the same chain has the same starts
+	return s.pattern(name, 1, 1, func(float64) float64 { return 2*r.Float64() - 1 })
+}
+
+func (s sower) pattern(name string, bonds, sites float64, shape func(i float64) float64) Seed {
+	c, seed := s.chain, Seed{Name: name}
+	if c.Bond.Active() {
+		count := c.Sites
+		if c.Boundary == model.Open {
+			count--
+		}
+		amplitude := bonds * seedGap * c.Hopping / 2 / c.Bond.Coupling
+		seed.Stretch = fill(count, amplitude, shape)
+	}
+	if c.Site.Active() {
+		// without a band the local mode itself sets the scale
+		scale := max(c.Hopping, c.Site.Coupling*c.Site.Coupling/c.Site.Stiffness)
+		seed.SiteMode = fill(c.Sites, sites*seedGap*scale/c.Site.Coupling, shape)
+	}
+	return seed
+}
+
+func fill(n int, amplitude float64, shape func(i float64) float64) []float64 {
+	x := make([]float64, n)
+	for i := range x {
+		x[i] = amplitude * shape(float64(i))
+	}
+	return x
+}

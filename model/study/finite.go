@@ -1,0 +1,126 @@
+package study
+
+import (
+	"context"
+	"math"
+	"sort"
+
+	"example.org/twokf/model"
+	"example.org/twokf/model/band"
+	"example.org/twokf/model/relax"
+)
+
+// mostLevels is the longest chain whose levels are all computed (the cost grows
+// as N²); of longer ones only the gap edges are known.
+const mostLevels = 4096
+
+var latticeStage = stage{
+	name:   "lattice",
+	inputs: finiteOf,
+	keep:   func(to, from *Portrait) { to.Lattice = from.Lattice },
+	run: func(ctx context.Context, in *inquiry) error {
+		set := relax.Settings{Jobs: in.settings.Jobs, Progress: in.relaxing}
+		if prev := in.settings.Previous; prev != nil && prev.Lattice != nil && prev.Chain.Sites == in.chain.Sites {
+			set.Previous = prev.Lattice.Lattice
+		}
+		l, err := relax.Run(ctx, in.chain, set)
+		if err != nil {
+			return err
+		}
+		in.portrait.Lattice = in.measure(l)
+		return nil
+	},
+}
+
+// finiteOf keeps what the finite chain depends on: everything but its name, how
+// its electron number was given, its lattice constant and its masses.
+func finiteOf(c model.Chain) model.Chain {
+	n, _ := c.Count()
+	c.Title, c.Source, c.Spacing, c.Energy = "", "", 0, 0
+	c.ByNumber, c.Electrons, c.Filling = true, n, 0
+	c.Bond.Frequency, c.Site.Frequency = 0, 0
+	return c
+}
+
+func (in *inquiry) relaxing(p relax.Progress) {
+	// a start counts by the decades that its residual has fallen
+	part := 0.0
+	if p.Residual > 0 && p.Residual < 1 {
+		part = min(1, math.Log(p.Residual)/math.Log(p.Tolerance))
+	}
+	in.progress("lattice", min(1, (float64(p.Finished)+part)/float64(p.Starts)),
+		"start %q: residual %.0e of %.0e", p.Start, p.Residual, p.Tolerance)
+}
+
+// measure takes the order parameters off a relaxed lattice.
+func (in *inquiry) measure(l *relax.Lattice) *Lattice {
+	c := in.chain
+	n, _ := c.Count()
+	q := math.Mod(2*math.Pi*float64(n)/float64(c.Spin*c.Sites), 2*math.Pi)
+	q = min(q, 2*math.Pi-q)
+	out := &Lattice{
+		Lattice:               l,
+		Ordering:              q,
+		DisplacementAmplitude: amplitude(l.Displacement, q, c.Sites),
+		SiteModeAmplitude:     amplitude(l.SiteMode, q, c.Sites),
+		DensityAmplitude:      amplitude(l.Electrons.Density, q, c.Sites),
+		BondOrderAmplitude:    amplitude(l.Electrons.BondOrder, q, c.Sites),
+		Gap:                   math.NaN(),
+	}
+	if gap := l.Electrons.Lowest - l.Electrons.Highest; !math.IsInf(gap, 0) {
+		out.Gap = gap
+	}
+	return out
+}
+
+// amplitude returns A_Q[x] = (2/N)·|Σ_j x_j e^(−iQj)|, with (1/N) at Q = π and
+// at Q = 0, where the wave is its own mirror image.
+func amplitude(x []float64, q float64, sites int) float64 {
+	var re, im float64
+	for j, v := range x {
+		s, c := math.Sincos(q * float64(j))
+		re += v * c
+		im -= v * s
+	}
+	a := 2 * math.Hypot(re, im) / float64(sites)
+	if math.Abs(math.Sin(q)) < 1e-9 {
+		a /= 2
+	}
+	return a
+}
+
+var levelStage = stage{
+	name:   "levels",
+	inputs: finiteOf,
+	keep:   func(to, from *Portrait) { to.Levels = from.Levels },
+	run: func(ctx context.Context, in *inquiry) error {
+		c := in.chain
+		if in.portrait.Lattice == nil || c.Sites > mostLevels {
+			return nil
+		}
+		energy, err := in.solver.Levels(ctx, nil, relax.Hamiltonian(c, in.portrait.Lattice.Lattice))
+		if err != nil {
+			return err
+		}
+		in.portrait.Levels = &Levels{Energy: energy, K: places(c)}
+		return nil
+	},
+}
+
+// places returns, for the levels of a chain in ascending order, the wave
+// vectors |k| of the undistorted chain's levels in ascending order of energy: a
+// level is drawn where the undistorted level of the same number stands, so that
+// a gap at E_F opens at kF.
+func places(c model.Chain) []float64 {
+	b := band.Of(c)
+	k := make([]float64, c.Sites)
+	for m := range k {
+		if c.Boundary == model.Ring {
+			k[m] = 2 * math.Pi * float64((m+1)/2) / float64(c.Sites)
+		} else {
+			k[m] = math.Pi * float64(m+1) / float64(c.Sites+1)
+		}
+	}
+	sort.SliceStable(k, func(i, j int) bool { return b.Energy(k[i]) < b.Energy(k[j]) })
+	return k
+}

@@ -1,0 +1,196 @@
+package tui
+
+import (
+	"context"
+	"fmt"
+	"runtime/debug"
+	"time"
+
+	tea "github.com/charmbracelet/bubbletea"
+
+	"example.org/twokf/model"
+	"example.org/twokf/model/study"
+)
+
+// update is what a study under way has to say: the newest portrait, how far it
+// is, or both.
+type update struct {
+	portrait *study.Portrait
+	progress *study.Progress
+}
+
+// Messages of a study. All carry the generation that asked; older ones are
+// dropped.
+type (
+	startMsg  struct{ gen int }
+	updateMsg struct {
+		gen  int
+		news update
+		from <-chan update
+	}
+	answeredMsg struct {
+		gen      int
+		portrait *study.Portrait
+		err      error
+	}
+	slowMsg struct{ gen int } // the study has taken long enough for its absence to show
+)
+
+const (
+	// settle is how long a burst of key presses is gathered before a study is
+	// started, when one is under way already.
+	settle = 30 * time.Millisecond
+	// patience is how long the plots may lag behind the knobs before they are
+	// drawn as stale and the progress is shown.
+	patience = 100 * time.Millisecond
+)
+
+// inquiry is the bench's side of the studies: the newest change wins.
+type inquiry struct {
+	gen    int
+	cancel context.CancelFunc
+	busy   bool // a study is under way or about to start
+	slow   bool // and has been for longer than patience
+	last   *study.Portrait
+	fresh  *study.Portrait // of the present generation, nil before its first part
+	stage  study.Progress
+	err    error
+}
+
+// ask starts a study of chain c and cancels the one before.
+func (q *inquiry) ask() tea.Cmd {
+	wait := time.Duration(0)
+	if q.busy {
+		wait = settle
+	}
+	if q.cancel != nil {
+		q.cancel()
+		q.cancel = nil
+	}
+	q.gen++
+	q.busy, q.fresh, q.err, q.stage = true, nil, nil, study.Progress{}
+	gen := q.gen
+	return tea.Batch(
+		tea.Tick(wait, func(time.Time) tea.Msg { return startMsg{gen} }),
+		tea.Tick(patience, func(time.Time) tea.Msg { return slowMsg{gen} }),
+	)
+}
+
+// start runs the study that ask announced.
+func (q *inquiry) start(ctx context.Context, c model.Chain, jobs int) tea.Cmd {
+	ctx, q.cancel = context.WithCancel(ctx)
+	gen, previous := q.gen, q.last
+	news := make(chan update, 1)
+	tell := func(u update) {
+		select { // only the newest is kept, but a portrait is not lost to a mere progress
+		case old := <-news:
+			if u.portrait == nil {
+				u.portrait = old.portrait
+			}
+		default:
+		}
+		news <- u
+	}
+	run := func() (msg tea.Msg) {
+		defer close(news)
+		defer func() {
+			if r := recover(); r != nil {
+				msg = answeredMsg{gen, nil, fmt.Errorf("the study failed: %v\n%s", r, debug.Stack())}
+			}
+		}()
+		p, err := study.Run(ctx, c, study.Settings{
+			Previous: previous,
+			Jobs:     jobs,
+			Publish:  func(p *study.Portrait) { tell(update{portrait: p}) },
+			Progress: func(p study.Progress) { tell(update{progress: &p}) },
+		})
+		return answeredMsg{gen, p, err}
+	}
+	return tea.Batch(run, listen(gen, news))
+}
+
+func listen(gen int, from <-chan update) tea.Cmd {
+	return func() tea.Msg {
+		u, ok := <-from
+		if !ok {
+			return nil
+		}
+		return updateMsg{gen, u, from}
+	}
+}
+
+// onUpdate takes news of a study in; it reports whether they were current.
+func (q *inquiry) onUpdate(m updateMsg) (current bool) {
+	if m.gen != q.gen || !q.busy {
+		return false
+	}
+	if m.news.portrait != nil {
+		q.fresh = m.news.portrait
+	}
+	if m.news.progress != nil {
+		q.stage = *m.news.progress
+	}
+	return true
+}
+
+// onAnswer takes the end of a study in.
+func (q *inquiry) onAnswer(m answeredMsg) (current bool) {
+	if m.gen != q.gen {
+		return false
+	}
+	q.busy, q.slow = false, false
+	q.err = m.err
+	if m.err == nil {
+		q.fresh, q.last = m.portrait, m.portrait
+	}
+	return true
+}
+
+// picture is what the plots show: the newest part of everything, and which
+// parts are older than the knobs.
+type picture struct {
+	study.Portrait
+	stale struct{ band, response, phonon, lattice, levels bool }
+	fresh *study.Portrait // the parts that are not stale; nil if all are
+}
+
+// picture merges the present study's parts with the last one's.
+func (q *inquiry) picture() picture {
+	var p picture
+	p.fresh = q.fresh
+	if q.fresh != nil {
+		p.Portrait = *q.fresh
+		if q.fresh.Complete {
+			return p
+		}
+	}
+	old := q.last
+	if old == nil {
+		return p
+	}
+	if q.fresh == nil {
+		p.Chain = old.Chain
+	}
+	if p.Band == nil {
+		p.Band, p.stale.band = old.Band, true
+	}
+	if p.Response == nil {
+		p.Response, p.stale.response = old.Response, true
+	}
+	if p.Phonon == nil {
+		p.Phonon, p.stale.phonon = old.Phonon, true
+	}
+	if p.Lattice == nil {
+		p.Lattice, p.stale.lattice = old.Lattice, true
+	}
+	if p.Levels == nil {
+		p.Levels, p.stale.levels = old.Levels, true
+	}
+	if p.Transition == nil {
+		p.Transition = old.Transition
+	}
+	if p.Doubts == nil {
+		p.Doubts = old.Doubts
+	}
+	return p
+}

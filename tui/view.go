@@ -1,0 +1,79 @@
+package tui
+
+import (
+	"math"
+
+	"example.org/twokf/tui/plot"
+)
+
+// view is one of the bench's plots. A view draws from the picture alone.
+type view interface {
+	name() string                    // for the key list
+	title(s *scene) string           // the heading: what is shown, and in which unit
+	draw(c *plot.Canvas, s *scene)   // everything below the heading
+	abscissae(s *scene) []float64    // the values of x that can be read, ascending
+	read(s *scene, x float64) string // what the plot shows at abscissa x
+	stale(p *picture) bool           // whether it is older than the knobs
+}
+
+// views in the order of their keys.
+var views = []view{bandView{}, chainView{}, chiView{}, phononView{}}
+
+// scene is all that a view may look at.
+type scene struct {
+	picture
+	large     bool // one plot has the whole screen
+	staggered bool // the lattice pattern is shown with its 2kF oscillation taken out
+	from, to  int  // sites shown by the chain view, from ≤ i < to
+	reading   float64
+	reads     bool // reading is the abscissa that is read in this view
+	spell     func(string) string
+}
+
+// plot draws a whole view: its heading, which gives way to the reading, and
+// what is below.
+func (s *scene) plot(c *plot.Canvas, v view) {
+	heading := v.title(s)
+	if s.reads {
+		heading = v.read(s, s.reading)
+	}
+	c.Heading(s.spell(heading), inkHeading)
+	v.draw(c, s)
+}
+
+// markReading draws where the plot is read.
+func (s *scene) markReading(c *plot.Canvas) {
+	if s.reads {
+		c.VMark(s.reading, "", inkPlain)
+	}
+}
+
+// span returns the range of the finite values, padded a little; ok is false
+// where there are none.
+func span(pad float64, xs ...[]float64) (lo, hi float64, ok bool) {
+	lo, hi = math.Inf(1), math.Inf(-1)
+	for _, x := range xs {
+		for _, v := range x {
+			if math.IsNaN(v) || math.IsInf(v, 0) {
+				continue
+			}
+			lo, hi = min(lo, v), max(hi, v)
+		}
+	}
+	if hi < lo {
+		return 0, 1, false
+	}
+	d := (hi - lo) * pad
+	return lo - d, hi + d, true
+}
+
+// nearest returns the index of the value of ascending xs that is nearest to x.
+func nearest(xs []float64, x float64) int {
+	best := 0
+	for i, v := range xs {
+		if math.Abs(v-x) < math.Abs(xs[best]-x) {
+			best = i
+		}
+	}
+	return best
+}
