@@ -50,6 +50,10 @@ func (b *Bench) knobText(i int) string {
 			value = report.Digits(p.Get(b.chain), 0, 7)
 		}
 	}
+	if p.Key == "conditions.temperature" && b.chain.Energy == model.UnitEV && b.chain.Temperature > 0 {
+		value = report.Digits(b.chain.Temperature, 0, 4)
+		unit += fmt.Sprintf(" (%s K)", report.Digits(b.chain.Temperature*kelvinPerEV, 0, 4))
+	}
 	mark := " "
 	if i == b.knob {
 		mark = "▸"

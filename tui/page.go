@@ -113,8 +113,12 @@ func answerPage(*Bench) page {
 		lines := []string{b.look.paint(inkHeading, "answers"), ""}
 		for _, a := range report.Answers(&pic.Portrait) {
 			symbol, value := b.spell(a.Symbol), b.spell(report.Digits(a.Value, a.Grain, 8)+" "+a.Unit)
-			lines = append(lines, b.look.paint(inkChosen, symbol)+strings.Repeat(" ", max(1, 11-ansi.StringWidth(symbol)))+
-				value+strings.Repeat(" ", max(1, 22-ansi.StringWidth(value)))+b.spell(a.About))
+			head := b.look.paint(inkChosen, symbol) + strings.Repeat(" ", max(1, 11-ansi.StringWidth(symbol))) +
+				value + strings.Repeat(" ", max(1, 20-ansi.StringWidth(value)))
+			for _, l := range wrap(b.spell(a.About), width-31) {
+				lines = append(lines, head+l)
+				head = strings.Repeat(" ", 31)
+			}
 		}
 		lines = append(lines, "")
 		return append(lines, wrap(b.spell(report.Method(&pic.Portrait)), width)...)

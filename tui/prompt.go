@@ -62,7 +62,7 @@ func (p *prompt) key(b *Bench, k tea.KeyMsg) tea.Cmd {
 	return nil
 }
 
-// rows returns the prompt's two lines.
+// rows returns the prompt's line and its hint, or what was wrong.
 func (p *prompt) rows(b *Bench) []string {
 	hint, ink := p.hint, inkAxis
 	if p.err != "" {
@@ -74,5 +74,9 @@ func (p *prompt) rows(b *Bench) []string {
 	if p.fresh {
 		typed = b.look.paint(inkAxis, b.spell(typed))
 	}
-	return []string{b.look.paint(inkHeading, b.spell(p.label)) + " = " + b.spell(typed), b.look.paint(ink, b.spell(hint))}
+	rows := []string{b.look.paint(inkHeading, b.spell(p.label)) + " = " + b.spell(typed)}
+	for _, l := range wrap(b.spell(hint), b.w) {
+		rows = append(rows, b.look.paint(ink, l))
+	}
+	return rows
 }

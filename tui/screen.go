@@ -152,6 +152,10 @@ func (b *Bench) footer() []string {
 	if text == "" && b.page != nil {
 		text = b.page.hint()
 	}
+	if text == "" && b.reading.on {
+		v := views[b.reading.view]
+		text = v.name() + ": " + v.read(b.scene(b.reading.view), b.reading.x)
+	}
 	if text == "" {
 		text = "? keys · p ready-made chains · s save · u undo · d doubts · q quit"
 	}

@@ -30,16 +30,14 @@ type scene struct {
 	spell     func(string) string
 }
 
-// plot draws a whole view: its heading, which gives way to the reading, and
-// what is below.
+// plot draws a whole view: its heading and what is below.
 func (s *scene) plot(c *plot.Canvas, v view) {
-	heading := v.title(s)
-	if s.reads {
-		heading = v.read(s, s.reading)
-	}
-	c.Heading(s.spell(heading), inkHeading)
+	c.Heading(s.spell(v.title(s)), inkHeading)
 	v.draw(c, s)
 }
+
+// label names the series drawn last.
+func (s *scene) label(c *plot.Canvas, name string) { c.Name(s.spell(name)) }
 
 // markReading draws where the plot is read.
 func (s *scene) markReading(c *plot.Canvas) {

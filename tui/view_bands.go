@@ -44,14 +44,14 @@ func (bandView) draw(c *plot.Canvas, s *scene) {
 	c.HMark(fermi, "EF", inkMark)
 	s.markReading(c)
 	c.Line(s.Band.K, s.Band.Energy, inkBare, plot.Solid)
-	c.Name("infinite, uniform")
+	s.label(c, "infinite, uniform")
 	if levels != nil {
 		c.Points(s.Levels.K, levels, inkFinite, plot.Heavy)
-		c.Name("levels, relaxed")
+		s.label(c, "levels, relaxed")
 	} else if s.Lattice != nil && !math.IsInf(s.Lattice.Electrons.Highest, 0) && !math.IsInf(s.Lattice.Electrons.Lowest, 0) {
 		k := s.Band.KF
 		c.Points([]float64{k, k}, []float64{s.Lattice.Electrons.Highest, s.Lattice.Electrons.Lowest}, inkFinite, plot.Heavy)
-		c.Name("gap edges")
+		s.label(c, "gap edges")
 	}
 }
 

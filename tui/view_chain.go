@@ -175,12 +175,12 @@ func (chainView) draw(c *plot.Canvas, s *scene) {
 	if s.staggered { // both without their fast oscillation
 		scaled, label := fitInto(smooth(s.Lattice.Electrons.Density, s.Chain.Boundary == model.Ring)[from:to], 0.9*frame.Max)
 		c.Line(x, scaled, inkDensity, plot.Dotted)
-		c.Name("n " + label)
+		s.label(c, "n "+label)
 	} else {
 		m := min(len(density), to)
 		scaled, label := fitInto(density[from:m], 0.9*frame.Max)
 		c.Stems(x[:m-from], scaled, 0, inkDensity, plot.Dotted)
-		c.Name(name[len(name)-1:] + " " + label)
+		s.label(c, name[len(name)-1:]+" "+label)
 	}
 	inks := []plot.Ink{inkFinite, inkBare}
 	shapes := []plot.Pattern{plot.Solid, plot.Dashed}
@@ -189,7 +189,7 @@ func (chainView) draw(c *plot.Canvas, s *scene) {
 			c.Points(x, p.values[from:to], inks[i], plot.Heavy)
 		}
 		c.Line(x, p.values[from:to], inks[i], shapes[i])
-		c.Name(p.name)
+		s.label(c, p.name)
 	}
 }
 

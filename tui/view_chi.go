@@ -52,14 +52,14 @@ func (chiView) draw(c *plot.Canvas, s *scene) {
 	s.markReading(c)
 	if len(ring) > 0 && (s.large || len(ring) < 60) {
 		c.Points(r.RingQ, ring, inkFinite, plot.Heavy)
-		c.Name("χ0 ring")
+		s.label(c, "χ0 ring")
 	}
 	if showBond {
 		c.Line(r.Q, bond, inkDensity, plot.Dashed)
-		c.Name("χ bond")
+		s.label(c, "χ bond")
 	}
 	c.Line(r.Q, site, inkBare, plot.Solid)
-	c.Name("χ0")
+	s.label(c, "χ0")
 }
 
 func (chiView) read(s *scene, x float64) string {

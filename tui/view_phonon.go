@@ -81,24 +81,24 @@ func (phononView) draw(c *plot.Canvas, s *scene) {
 	s.markReading(c)
 	if ratio {
 		c.Line([]float64{0, math.Pi}, []float64{1, 1}, inkBare, plot.Dashed)
-		c.Name("bare")
+		s.label(c, "bare")
 	}
 	if bond {
 		c.Line(s.Phonon.Q, bareBond, inkBare, plot.Dashed)
-		c.Name("bare")
+		s.label(c, "bare")
 	}
 	if site {
 		c.Line(s.Phonon.Q, bareSite, inkBare, plot.Dashed)
 		if !bond {
-			c.Name("bare")
+			s.label(c, "bare")
 		}
 	}
 	if bond && site {
 		c.Line(s.Phonon.Q, upper, inkDensity, plot.Solid)
-		c.Name("upper")
+		s.label(c, "upper")
 	}
 	c.Line(s.Phonon.Q, lower, inkFinite, plot.Solid)
-	c.Name("renormalised")
+	s.label(c, "renormalised")
 }
 
 // clip raises values below low to it.

@@ -75,7 +75,7 @@ func (b Band) coldExcess(s surface, f, T float64) func(x float64) (value, slope 
 func (b Band) hotExcess(s surface, f, T float64) func(x float64) (value, slope float64) {
 	return func(x float64) (float64, float64) {
 		var full, empty, slope float64
-		b.EachHot(T, s.energy+x, func(_ float64, occupied, unoccupied float64) {
+		b.eachHot(T, s.energy+x, func(_ float64, occupied, unoccupied float64) {
 			full += occupied
 			empty += unoccupied
 			slope += occupied * unoccupied / T
@@ -84,8 +84,8 @@ func (b Band) hotExcess(s surface, f, T float64) func(x float64) (value, slope f
 	}
 }
 
-// EachHot visits Periodic equally spaced wave vectors with f and 1−f.
-func (b Band) EachHot(T, mu float64, visit func(k, occupied, unoccupied float64)) {
+// eachHot visits Periodic equally spaced wave vectors with f and 1−f.
+func (b Band) eachHot(T, mu float64, visit func(k, occupied, unoccupied float64)) {
 	for i := range Periodic {
 		k := 2 * math.Pi * float64(i) / Periodic
 		x := (b.Energy(k) - mu) / T
@@ -98,7 +98,7 @@ func (b Band) EachHot(T, mu float64, visit func(k, occupied, unoccupied float64)
 func (b Band) BondOrder(T float64) float64 {
 	if b.Hot(T) && b.Filling > 0 && b.Filling < float64(b.Spin) {
 		var sum float64
-		b.EachHot(T, b.ChemicalPotential(T), func(k, occupied, _ float64) {
+		b.eachHot(T, b.ChemicalPotential(T), func(k, occupied, _ float64) {
 			sum += 2 * math.Cos(k) * occupied
 		})
 		return sum * float64(b.Spin) / Periodic

@@ -43,16 +43,16 @@ func openShell(e Evidence) (Doubt, bool) {
 	if e.Lattice == nil {
 		return Doubt{}, false
 	}
-	value := 0.0
+	value, why := 0.0, "every level at the Fermi energy is full or empty"
 	if e.Lattice.Electrons.OpenShell {
-		value = 1
+		value, why = 1, "a level at the Fermi energy is only partly filled; its states share the electrons equally (the T → 0 limit)"
 	}
 	return Doubt{
 		Name:    "open_shell",
 		Verdict: verdict(value > 0),
 		Value:   value,
 		Limit:   0,
-		Why:     "a level at the Fermi energy is only partly filled; its states share the electrons equally (the T → 0 limit)",
+		Why:     why,
 		Source:  "common practice",
 	}, true
 }
@@ -97,7 +97,7 @@ func (e Evidence) distorted() bool {
 }
 
 func levelSpacing(e Evidence) (Doubt, bool) {
-	if e.Lattice == nil || e.Velocity == 0 || math.IsNaN(e.Gap) || !e.distorted() {
+	if e.Lattice == nil || e.Velocity == 0 || math.IsNaN(e.Gap) || e.Lattice.Electrons.OpenShell || !e.distorted() {
 		return Doubt{}, false
 	}
 	half := e.Gap / 2

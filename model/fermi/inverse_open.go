@@ -9,7 +9,7 @@ func (w *sweep) open(h *Hamiltonian, density, bond []float64) {
 	det := newProduct()
 	var er, ei [width]float64
 	w.forward(h, 0, len(h.Site), &er, &ei, &det)
-	det.addTo(&w.log)
+	det.addTo(&w.log, 0.5)
 	var gr, gi [width]float64
 	w.backward(h, len(h.Site), 0, &gr, &gi, density, bond)
 }

@@ -54,7 +54,7 @@ func (w *sweep) ring(h *Hamiltonian, density, bond []float64) {
 		p += a * b.gr[l]
 	}
 	det.settle()
-	det.addTo(&w.log)
+	det.addTo(&w.log, 0.5)
 	density[last] += n
 	density[last-1] += nn
 	bond[last-1] += 2 * p

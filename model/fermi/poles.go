@@ -44,3 +44,18 @@ func (p *poles) match(exact func(x float64) float64) {
 		p.constant += w / points
 	}
 }
+
+// narrower and wider are the room left when poles are made, so that they
+// serve the next chains of a sequence too; wasteful is the part of the gap
+// below which they are made anew. Each costs the logarithm of it, in per cent.
+const (
+	narrower = 0.9
+	wider    = 1.03
+	wasteful = 0.6
+)
+
+// covers tells whether the poles are good for levels at m to M from μ, and not
+// much more.
+func (p *poles) covers(m, M float64) bool {
+	return len(p.weight) > 0 && p.inner <= m && p.outer >= M && p.inner >= wasteful*m && wasteful*p.outer <= M
+}

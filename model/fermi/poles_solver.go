@@ -13,6 +13,9 @@ type poleSolver struct {
 	step  [2]poles // the last steps at T = 0, below and above an open shell
 	sweep sweep
 	warm  warm
+
+	half   bool    // a balanced chain, half filled
+	middle float64 // then its chemical potential
 }
 
 // errUnresolved is what poles fail with on their own account.
@@ -32,29 +35,28 @@ func (p *poleSolver) solve(ctx context.Context, h *Hamiltonian, occ Occupation, 
 		return err
 	}
 	st.ChemicalPotential = s.fermiLevel()
+	p.middle, p.half = h.balanced()
+	p.half = p.half && perSpin == float64(len(h.Site))/2
+	if p.half {
+		st.ChemicalPotential = p.middle
+	}
 	st.Highest, st.Lowest, st.OpenShell = s.highest, s.lowest, s.open
 	if s.frozen(occ.Temperature, p.gap.same, empty) {
-		return p.solveCold(ctx, h, spin, s, empty, perSpin, occ.Temperature, st)
+		err = p.solveCold(ctx, h, spin, s, empty, perSpin, occ.Temperature, st)
+	} else {
+		err = p.solveWarm(ctx, h, spin, perSpin, occ.Temperature, st)
 	}
-	return p.solveWarm(ctx, h, spin, perSpin, occ.Temperature, st)
-}
-
-// coldGap is the gap, in units of the temperature, across which nothing is
-// excited: at either edge f differs from 0 or 1 by e⁻³⁰ = 1e-13.
-const coldGap = 60
-
-// frozen tells whether at this temperature the levels are filled as at T = 0.
-func (s shell) frozen(temperature, same float64, empty [2]interval) bool {
-	cold := func(e interval) bool { return e.hi-e.lo >= coldGap*temperature }
-	switch {
-	case temperature <= coldest*same || math.IsInf(s.highest, 0) || math.IsInf(s.lowest, 0):
-		return true
-	case !s.open:
-		return cold(empty[0])
-	case s.reach-s.full > 1:
-		return false // levels that are one to counting may differ by T
+	if err != nil {
+		return err
 	}
-	return cold(empty[0]) && cold(empty[1])
+	missing := occ.Electrons
+	for _, n := range st.Density {
+		missing -= n
+	}
+	if !(math.Abs(missing) <= 1e-9*float64(len(h.Site))) {
+		return fmt.Errorf("%w: the densities miss %g of %g electrons", errUnresolved, missing, occ.Electrons)
+	}
+	return nil
 }
 
 // solveCold fills levels from below, a degenerate one in equal parts:
@@ -98,6 +100,9 @@ func (p *poleSolver) project(ctx context.Context, h *Hamiltonian, which, filled 
 		return energy, nil
 	}
 	mu := empty.lo + (empty.hi-empty.lo)/2
+	if p.half && 2*filled == n {
+		mu = p.middle
+	}
 	m := min(empty.hi-mu, mu-empty.lo)
 	M := max(p.gap.hi-mu, mu-p.gap.lo)
 	step := &p.step[which]
@@ -110,23 +115,8 @@ func (p *poleSolver) project(ctx context.Context, h *Hamiltonian, which, filled 
 	return omega + mu*float64(filled), err
 }
 
-// narrower and wider are the room left when poles are made, so that they
-// serve the next chains of a sequence too; wasteful is the part of the gap
-// below which they are made anew. Each costs the logarithm of it, in per cent.
-const (
-	narrower = 0.9
-	wider    = 1.03
-	wasteful = 0.6
-)
-
-// covers tells whether the poles are good for levels at m to M from μ, and not
-// much more.
-func (p *poles) covers(m, M float64) bool {
-	return len(p.weight) > 0 && p.inner <= m && p.outer >= M && p.inner >= wasteful*m && wasteful*p.outer <= M
-}
-
-// sum adds scale·f(H − μ) to density and bond and returns
-// the grand potential Σ ω(ε − μ) per spin.
+// sum adds scale·f(H − μ) to density and bond and returns the grand potential
+// Σ ω(ε − μ) per spin.
 func (p *poleSolver) sum(ctx context.Context, h *Hamiltonian, f *poles, mu, scale float64, density, bond []float64) (omega float64, err error) {
 	n := float64(len(h.Site))
 	for i, a := range h.Site {
@@ -135,6 +125,7 @@ func (p *poleSolver) sum(ctx context.Context, h *Hamiltonian, f *poles, mu, scal
 	}
 	omega -= n * f.constant
 	p.sweep.order = 0
+	p.sweep.symmetric = p.half && mu == p.middle
 	for first := 0; first < len(f.weight); first += width {
 		if err := context.Cause(ctx); err != nil {
 			return 0, err

@@ -12,32 +12,35 @@ func TestPolesScratch(t *testing.T) {
 	worst := map[string]float64{}
 	sp := Solver{Method: Poles}
 	sd := Solver{Method: Dense}
-	for trial := range 500 {
+	for trial := range 1000 {
 		n := 5 + rng.IntN(100)
 		h := &Hamiltonian{Site: make([]float64, n), Ring: rng.IntN(2) == 0}
 		h.Bond = make([]float64, n-1)
 		if h.Ring {
 			h.Bond = make([]float64, n)
 		}
-		kind := rng.IntN(4)
+		kind := rng.IntN(5)
 		for i := range h.Bond {
 			h.Bond[i] = 1
 			switch kind {
 			case 1:
 				h.Bond[i] += 0.2 * float64(1-2*(i%2))
-			case 2:
+			case 2, 4:
 				h.Bond[i] = 1 + 0.3*rng.NormFloat64()
 			}
 		}
 		for i := range h.Site {
-			if kind >= 2 {
+			if kind >= 2 && kind < 4 {
 				h.Site[i] = rng.NormFloat64()
 			}
 		}
-		if rng.IntN(2) == 0 {
+		if rng.IntN(2) == 0 && kind != 4 {
 			h.Next = 0.3
 		}
 		occ := Occupation{Electrons: float64(rng.IntN(2*n + 1)), Spin: 2}
+		if kind == 4 {
+			occ.Electrons = float64(n)
+		}
 		if rng.IntN(2) == 0 {
 			occ.Temperature = math.Pow(10, 2-6*rng.Float64())
 		}
@@ -58,6 +61,9 @@ func TestPolesScratch(t *testing.T) {
 		}
 		if h.Next != 0 {
 			name += "next"
+		}
+		if kind == 4 {
+			name += "half"
 		}
 		if occ.Temperature > 0 {
 			name += "/warm"
@@ -131,4 +137,23 @@ func BenchmarkSharp1000(b *testing.B)   { benchmarkSolve(b, 1000, false, 0) }
 func BenchmarkRough10000(b *testing.B)  { benchmarkSolve(b, 10000, true, 0) }
 func BenchmarkRough100000(b *testing.B) { benchmarkSolve(b, 100000, true, 0) }
 
+func BenchmarkHalf(b *testing.B) {
+	for _, n := range []int{200, 1000, 10000, 100000} {
+		h := gapped(n)
+		clear(h.Site)
+		s := Solver{RoughEdges: true}
+		var st State
+		occ := Occupation{Electrons: float64(n), Spin: 2}
+		k := 0
+		b.Run("", func(b *testing.B) {
+			for b.Loop() {
+				k++
+				h.Bond[k%n] *= 1 + 1e-4*float64(k%3-1)
+				if err := s.Solve(context.Background(), h, occ, &st); err != nil {
+					b.Fatal(err)
+				}
+			}
+		})
+	}
+}
 func BenchmarkPolaron200(b *testing.B) { benchmarkSolve(b, 200, true, 1) }

@@ -26,10 +26,7 @@ func (p *poles) fermiDirac(temperature, M, tolerance float64) bool {
 	frequency, root := matsubara(ratio)
 	r := max(1, int(math.Log(2/tolerance)*math.Log(4*max(1, ratio/math.Pi))/(math.Pi*math.Pi)))
 	for ; r <= mostPoles; r++ {
-		if !p.project(frequency, root, ratio, r) {
-			return false
-		}
-		if p.thermalError(ratio) <= tolerance {
+		if p.project(frequency, root, ratio, r) && p.thermalError(ratio) <= tolerance {
 			for k := range p.weight {
 				p.weight[k] *= temperature
 				p.shift[k] *= temperature
@@ -39,6 +36,7 @@ func (p *poles) fermiDirac(temperature, M, tolerance float64) bool {
 			return true
 		}
 	}
+	*p = poles{}
 	return false
 }
 

@@ -93,3 +93,21 @@ func shellOf(levels []float64, n, same float64) shell {
 	}
 	return s
 }
+
+// coldGap is the gap, in units of the temperature, across which nothing is
+// excited: at either edge f differs from 0 or 1 by e⁻³⁰ = 1e-13.
+const coldGap = 60
+
+// frozen tells whether at this temperature the levels are filled as at T = 0.
+func (s shell) frozen(temperature, same float64, empty [2]interval) bool {
+	cold := func(e interval) bool { return e.hi-e.lo >= coldGap*temperature }
+	switch {
+	case temperature <= coldest*same || math.IsInf(s.highest, 0) || math.IsInf(s.lowest, 0):
+		return true
+	case !s.open:
+		return cold(empty[0])
+	case s.reach-s.full > 1:
+		return false // levels that are one to counting may differ by T
+	}
+	return cold(empty[0]) && cold(empty[1])
+}

@@ -19,6 +19,7 @@ type cell [2 * width]float64
 // least s, so none needs to be exchanged.
 type sweep struct {
 	mu            float64
+	symmetric     bool           // the chain is balanced about mu
 	mask          int            // products of pivots are settled at sites i with i&mask == 0
 	shift, weight [width]float64 // s; a, zero for a lane that is not used
 	faded         float64        // square of m (see ring) below which it is dropped
@@ -43,7 +44,7 @@ func (w *sweep) load(p *poles, first int, mu, scale float64) {
 	// The border contributes m² to an inverse. Farther on m may grow again, by
 	// |β (z−H)⁻¹| < M/s at most.
 	ratio := slices.Min(w.shift[:]) / p.outer
-	w.faded = 0x1p-53 * ratio * ratio
+	w.faded = 1e-20 * ratio * ratio
 	w.mask = 7
 	if max(p.outer, slices.Max(p.shift)) > 1e15 || slices.Min(p.shift) < 1e-15 {
 		w.mask = 0
@@ -62,6 +63,8 @@ func (w *sweep) add(h *Hamiltonian, density, bond []float64) {
 				w.order += 2 * a * order
 			}
 		}
+	case w.symmetric:
+		w.balanced(h, bond)
 	case h.Ring:
 		w.border = resize(w.border, len(h.Site))
 		w.ring(h, density, bond)
@@ -70,7 +73,7 @@ func (w *sweep) add(h *Hamiltonian, density, bond []float64) {
 	}
 }
 
-// product gathers ln |d|² of pivots: the numbers are multiplied and their
+// product gathers ln |d| of pivots or ln |d|²: the numbers are multiplied and their
 // exponents set aside every few sites, which saves the logarithms.
 type product struct {
 	mantissa [width]float64
@@ -94,9 +97,9 @@ func (p *product) settle() {
 	}
 }
 
-// addTo adds half the logarithm of the product to log.
-func (p *product) addTo(log *[width]float64) {
+// addTo adds the logarithm of the product, times power, to log.
+func (p *product) addTo(log *[width]float64, power float64) {
 	for l, v := range p.mantissa {
-		log[l] += 0.5 * (math.Log(v) + math.Ln2*float64(p.exponent[l]))
+		log[l] += power * (math.Log(v) + math.Ln2*float64(p.exponent[l]))
 	}
 }

@@ -8,11 +8,13 @@ import (
 
 // warm is what is kept for electrons at T > 0.
 type warm struct {
-	poles  poles
-	trials [2]trial
-	key    warmKey // what the following belong to
-	mu     float64 // the last chemical potential
-	slope  float64 // and dN/dμ per spin
+	poles       poles
+	temperature float64 // of the poles
+	trials      [2]trial
+
+	key   warmKey // what the following belong to
+	mu    float64 // the last chemical potential
+	slope float64 // and dN/dμ per spin
 }
 
 type warmKey struct {
@@ -37,7 +39,6 @@ func (p *poleSolver) solveWarm(ctx context.Context, h *Hamiltonian, spin, perSpi
 	size := float64(len(h.Site))
 	key := warmKey{len(h.Site), perSpin, temperature}
 	if w.key != key {
-		w.poles.weight = w.poles.weight[:0]
 		w.mu, w.slope = st.ChemicalPotential, 0
 	}
 	shift := temperature * math.Log((size-perSpin)/perSpin) // every level at ε is filled n/N at μ = ε − shift
@@ -45,6 +46,9 @@ func (p *poleSolver) solveWarm(ctx context.Context, h *Hamiltonian, spin, perSpi
 	enough := max(1e-13*min(perSpin, size-perSpin), 4e-16*size)
 	before, now := &w.trials[0], &w.trials[1]
 	mu := min(max(w.mu, r.lo), r.hi)
+	if p.half {
+		mu = p.middle
+	}
 	for range most {
 		if err := p.try(ctx, h, mu, spin, key, before); err != nil {
 			return err
@@ -84,7 +88,8 @@ func (p *poleSolver) firstSlope(excess float64, key warmKey, st *State) float64 
 func (p *poleSolver) try(ctx context.Context, h *Hamiltonian, mu, spin float64, key warmKey, t *trial) error {
 	f := &p.warm.poles
 	M := max(p.gap.hi-mu, mu-p.gap.lo)
-	if len(f.weight) == 0 || f.outer < M || wasteful*f.outer > M {
+	if p.warm.temperature != key.temperature || f.outer < M || wasteful*f.outer > M {
+		p.warm.temperature = key.temperature
 		if !f.fermiDirac(key.temperature, roomy*M, poleTolerance) {
 			return fmt.Errorf("%w: temperature %g cannot be resolved in a band of width %g", errUnresolved, key.temperature, p.gap.hi-p.gap.lo)
 		}
@@ -96,10 +101,11 @@ func (p *poleSolver) try(ctx context.Context, h *Hamiltonian, mu, spin float64, 
 	var err error
 	t.omega, err = p.sum(ctx, h, f, mu, spin, t.density, t.bond)
 	t.order = p.sweep.order
-	t.excess = -key.perSpin
+	t.excess = -spin * key.perSpin
 	for _, n := range t.density {
-		t.excess += n / spin
+		t.excess += n
 	}
+	t.excess /= spin
 	return err
 }
 

@@ -24,6 +24,7 @@ func (p *poles) zolotarev(m, M, tolerance float64) bool {
 			return true
 		}
 	}
+	*p = poles{}
 	return false
 }
 

@@ -50,11 +50,11 @@ var questions = []question{
 		}},
 	{"density_of_states", "N(EF)", perEnergy, "states per site and energy at the Fermi level, all spins",
 		fromBand(func(p *study.Portrait) float64 { return p.Band.DensityOfStates })},
-	{"coupling_bond", "λb", pure, "dimensionless coupling of the bond phonon",
+	{"coupling_bond", "λ(bond)", pure, "dimensionless coupling of the bond phonon",
 		coupled(func(p *study.Portrait) (float64, bool) {
 			return p.Transition.CouplingBond, p.Chain.Bond.Active() && p.Transition.CouplingBond > 0
 		})},
-	{"coupling_site", "λs", pure, "dimensionless coupling of the site phonon",
+	{"coupling_site", "λ(site)", pure, "dimensionless coupling of the site phonon",
 		coupled(func(p *study.Portrait) (float64, bool) {
 			return p.Transition.CouplingSite, p.Chain.Site.Active() && p.Transition.CouplingSite > 0
 		})},
@@ -79,7 +79,7 @@ var questions = []question{
 		amplitude(func(p *study.Portrait) (float64, bool) {
 			return p.Lattice.DisplacementAmplitude, p.Lattice.Displacement != nil
 		})},
-	{"site_mode_amplitude", "A[q]", length, "the same of the local mode",
+	{"site_mode_amplitude", "A[q]", pure, "the same of the local mode",
 		amplitude(func(p *study.Portrait) (float64, bool) {
 			return p.Lattice.SiteModeAmplitude, p.Lattice.SiteMode != nil
 		})},

@@ -77,8 +77,12 @@ func (r *Bulk) Temperature() float64 { return r.temperature }
 // rounding ends the logarithm near 1e-16 t.
 func (r *Bulk) At(q float64) Static {
 	turns := math.Round(q / (2 * math.Pi))
-	s := r.response(r, math.Min(math.Abs(q-2*math.Pi*turns), math.Pi))
-	if math.Mod(turns, 2) != 0 {
+	q = math.Min(math.Abs(q-2*math.Pi*turns), math.Pi)
+	s := r.response(r, q)
+	switch {
+	case q == math.Pi: // inversion about a bond maps π on itself
+		s.Mixed = 0
+	case math.Mod(turns, 2) != 0:
 		s.Mixed = -s.Mixed
 	}
 	return s
@@ -130,11 +134,7 @@ func (r *Bulk) contourSum(q float64) Static {
 		sum.add(1, r.branches[i].sum(&v))
 	}
 	scale := float64(r.band.Spin) / math.Pi
-	sum = Static{Site: scale * sum.Site, Bond: scale * sum.Bond, Mixed: scale * sum.Mixed}
-	if v.cos == 0 { // inversion about a bond maps q = π on itself
-		sum.Mixed = 0
-	}
-	return sum
+	return Static{Site: scale * sum.Site, Bond: scale * sum.Bond, Mixed: scale * sum.Mixed}
 }
 
 // hotNode is one midpoint s = k + q/2 of the sum for high temperatures; s and −s

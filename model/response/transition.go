@@ -22,14 +22,15 @@ const Coldest = 1e-60
 //
 // A temperature is 0 where there is no coupling, no filling, or where it would
 // lie below Coldest; firstQ is then the ordering vector. The temperature is
-// accurate to about 1e-12 of itself. The error is that of ctx, or names a
-// parameter that is out of its range.
+// accurate to about 1e-12 of itself. An unstable interval between two stable
+// ones is found when it spans a factor of two in T. The error is that of ctx,
+// or names a parameter that is out of its range.
 func Transition(ctx context.Context, c model.Chain) (at2kF, first, firstQ float64, err error) {
 	b := band.Of(c)
 	ordering := b.Ordering()
-	for name, p := range map[string]model.Phonon{"bond": c.Bond, "site": c.Site} {
+	for i, p := range []model.Phonon{c.Bond, c.Site} {
 		if p.Active() && !(p.Stiffness > 0) {
-			return 0, 0, ordering, fmt.Errorf("stiffness of the %s phonon is %v; it must be positive", name, p.Stiffness)
+			return 0, 0, ordering, fmt.Errorf("stiffness of the %s phonon is %v; it must be positive", [...]string{"bond", "site"}[i], p.Stiffness)
 		}
 	}
 	// χ0 ≤ g_s/4T and χ_b ≤ 4·g_s/4T, hence the trace of 1 − R is below 1 here.

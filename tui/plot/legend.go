@@ -47,10 +47,10 @@ func (c *Canvas) placeBlock(entries []entry) bool {
 		case top + 1:
 			row = lowest
 		}
-		for at := c.w - width - 1; at > left && best > 0; at-- {
+		for at := c.w - width; at > left && best > 0; at-- {
 			sum := 0
 			for k := 0; k < len(entries) && sum < best; k++ {
-				sum += c.cost(at-1, row+k, width+2) // a blank on both sides
+				sum += c.cost(at, row+k, width) + c.touch(at-1, row+k) + c.touch(at+width, row+k)
 			}
 			if sum < best {
 				best, bc, br = sum, at, row
@@ -64,6 +64,14 @@ func (c *Canvas) placeBlock(entries []entry) bool {
 		c.entry(&entries[i], bc, br+i)
 	}
 	return true
+}
+
+// touch is the small cost of a block beside a cell that is not blank, or beside the edge.
+func (c *Canvas) touch(col, row int) int {
+	if col >= 0 && col < c.w && c.cells[row*c.w+col].layer == blank {
+		return 0
+	}
+	return overRuler
 }
 
 // entry draws one sample with its name and returns the column after it.
