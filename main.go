@@ -4,7 +4,6 @@
 package main
 
 import (
-	"bufio"
 	"context"
 	"errors"
 	"fmt"
@@ -52,9 +51,6 @@ func (e usageError) Unwrap() error { return e.error }
 func run(ctx context.Context, args []string, in io.Reader, out, errs io.Writer) int {
 	root := rootCommand(in, out, errs)
 	root.SetArgs(args)
-	root.SetIn(in)
-	root.SetOut(out)
-	root.SetErr(errs)
 	err := root.ExecuteContext(ctx)
 	if err == nil {
 		return 0
@@ -105,7 +101,7 @@ Without a command it opens the bench on a ready-made chain (see "twokf presets")
 on a chain file, or on "-" for a chain on standard input.`,
 		Example: `  twokf                                  open the bench
   twokf doped.toml --set temperature=40meV
-  twokf solve polyacetylene --json`,
+  twokf solve polyene --json`,
 		Args:              oneChain,
 		ValidArgsFunction: completePresets,
 		SilenceErrors:     true,
@@ -114,7 +110,7 @@ on a chain file, or on "-" for a chain on standard input.`,
 			if err := o.check(); err != nil {
 				return err
 			}
-			chain, from, err := openChain(args, o.set, in)
+			chain, from, err := openChain(cmd.Context(), args, o.set, in)
 			if err != nil {
 				return err
 			}
@@ -130,10 +126,37 @@ on a chain file, or on "-" for a chain on standard input.`,
 		},
 	}
 	o.register(root)
-	root.CompletionOptions.HiddenDefaultCmd = true
+	root.SetIn(in)
+	root.SetOut(out)
+	root.SetErr(errs)
 	root.SetFlagErrorFunc(func(_ *cobra.Command, err error) error { return usageError{err} })
+	root.SetHelpCommand(helpCommand())
 	root.AddCommand(solveCommand(in, out, errs), presetsCommand(out), versionCommand(out))
+	root.CompletionOptions.HiddenDefaultCmd = true
+	root.InitDefaultCompletionCmd()
+	if completion, _, err := root.Find([]string{"completion"}); err == nil {
+		completion.Example = "  source <(twokf completion bash)"
+		completion.RunE = func(*cobra.Command, []string) error {
+			return usageError{errors.New("for which shell? bash, fish, powershell or zsh")}
+		}
+	}
 	return root
+}
+
+func helpCommand() *cobra.Command {
+	return &cobra.Command{
+		Use:     "help [COMMAND]",
+		Short:   "Say how a command is used",
+		Example: "  twokf help solve",
+		RunE: func(cmd *cobra.Command, args []string) error {
+			about, unknown, err := cmd.Root().Find(args)
+			if err != nil || len(unknown) > 0 {
+				return usageError{fmt.Errorf("there is no command %q; the commands are solve, presets and version", strings.Join(args, " "))}
+			}
+			about.InitDefaultHelpFlag() // to be listed
+			return about.Help()
+		},
+	}
 }
 
 func oneChain(_ *cobra.Command, args []string) error {
@@ -147,7 +170,7 @@ func presetsCommand(out io.Writer) *cobra.Command {
 	return &cobra.Command{
 		Use:               "presets [NAME]",
 		Short:             "List the ready-made chains, or print one as a chain file",
-		Example:           "  twokf presets\n  twokf presets polyacetylene > mine.toml",
+		Example:           "  twokf presets\n  twokf presets polyene > mine.toml",
 		Args:              oneChain,
 		ValidArgsFunction: completePresets,
 		RunE: func(_ *cobra.Command, args []string) error {
@@ -159,15 +182,15 @@ func presetsCommand(out io.Writer) *cobra.Command {
 				_, err = out.Write(text)
 				return err
 			}
-			lines := bufio.NewWriter(spelled(out, !utf8Locale()))
+			var lines strings.Builder
 			width := 0
 			for _, p := range presets.List() {
 				width = max(width, len(p.Name))
 			}
 			for _, p := range presets.List() {
-				fmt.Fprintf(lines, "%-*s  %s\n", width, p.Name, p.Title)
+				fmt.Fprintf(&lines, "%-*s  %s\n", width, p.Name, p.Title)
 			}
-			return lines.Flush()
+			return say(out, lines.String(), !utf8Locale())
 		},
 	}
 }
@@ -188,16 +211,22 @@ func solveCommand(in io.Reader, out, errs io.Writer) *cobra.Command {
 
 The chain is a ready-made one, a chain file, or "-" for a file on standard input.
 A number after --set may carry a unit: 300 K, 25 meV, 0.3 t, 12 THz, 40 cm-1, pi/2.`,
-		Example: `  twokf solve polyacetylene
+		Example: `  twokf solve polyene
   twokf solve mine.toml --set temperature='300 K' --set chain.sites=400 --json
-  twokf presets polyacetylene | twokf solve - --csv answers`,
+  twokf presets polyene | twokf solve - --csv answers`,
 		Args:              oneChain,
 		ValidArgsFunction: completePresets,
 		RunE: func(cmd *cobra.Command, args []string) error {
 			if err := o.check(); err != nil {
 				return err
 			}
-			chain, _, err := openChain(args, o.set, in)
+			switch toFolder := cmd.Flags().Changed("csv"); {
+			case toFolder && o.csv == "":
+				return usageError{errors.New("--csv needs the name of a folder")}
+			case toFolder && o.json:
+				return usageError{errors.New("--json and --csv exclude each other; give one of them")}
+			}
+			chain, _, err := openChain(cmd.Context(), args, o.set, in)
 			if err != nil {
 				return err
 			}
@@ -207,7 +236,6 @@ A number after --set may carry a unit: 300 K, 25 meV, 0.3 t, 12 THz, 40 cm-1, pi
 	o.register(cmd)
 	cmd.Flags().BoolVar(&o.json, "json", false, "print one JSON object")
 	cmd.Flags().StringVar(&o.csv, "csv", "", "write CSV files into the folder `DIR`")
-	cmd.MarkFlagsMutuallyExclusive("json", "csv")
 	_ = cmd.MarkFlagDirname("csv")
 	return cmd
 }
@@ -230,7 +258,10 @@ func solve(ctx context.Context, chain model.Chain, o solveOptions, out, errs io.
 			_, err = fmt.Fprintln(out, strings.Join(files, "\n"))
 		}
 	default:
-		err = report.Text(spelled(out, o.ascii), p)
+		var text strings.Builder
+		if err = report.Text(&text, p); err == nil {
+			err = say(out, text.String(), o.ascii)
+		}
 	}
 	return err
 }
@@ -273,13 +304,28 @@ type origin struct {
 	file string // path to save to; "" for a preset or standard input
 }
 
-// openChain reads the chain that the arguments name and applies --set.
-func openChain(args, set []string, in io.Reader) (model.Chain, origin, error) {
+// openChain reads the chain that the arguments name and applies --set. It gives
+// up when ctx ends, even while a pipe keeps it waiting.
+func openChain(ctx context.Context, args, set []string, in io.Reader) (model.Chain, origin, error) {
 	name := presets.List()[0].Name
 	if len(args) > 0 {
 		name = args[0]
 	}
-	chain, from, err := readChain(name, in)
+	var (
+		chain model.Chain
+		from  origin
+		err   error
+	)
+	read := make(chan struct{})
+	go func() {
+		defer close(read)
+		chain, from, err = readChain(name, in)
+	}()
+	select {
+	case <-read:
+	case <-ctx.Done():
+		return model.Chain{}, origin{}, ctx.Err()
+	}
 	if err != nil {
 		return model.Chain{}, origin{}, err
 	}
@@ -289,8 +335,8 @@ func openChain(args, set []string, in io.Reader) (model.Chain, origin, error) {
 	return chain, from, nil
 }
 
-// readChain takes "-" for standard input, what is there as a file or looks like
-// one for a file, and anything else for a preset.
+// readChain takes "-" for standard input, the name of a preset for that preset,
+// and anything else for a file.
 func readChain(name string, in io.Reader) (model.Chain, origin, error) {
 	if name == "-" {
 		c, err := model.Read(in, "standard input")
@@ -312,19 +358,13 @@ func readChain(name string, in io.Reader) (model.Chain, origin, error) {
 	return c, origin{name: filepath.Base(name), file: name}, err
 }
 
-// spelled passes text on, in ASCII where that is wanted.
-func spelled(out io.Writer, ascii bool) io.Writer {
-	if !ascii {
-		return out
+// say writes a text, in ASCII where that is wanted.
+func say(out io.Writer, text string, ascii bool) error {
+	if ascii {
+		text = report.ASCII(text)
 	}
-	return asciiWriter{out}
-}
-
-type asciiWriter struct{ out io.Writer }
-
-func (w asciiWriter) Write(p []byte) (int, error) {
-	_, err := io.WriteString(w.out, report.ASCII(string(p)))
-	return len(p), err
+	_, err := io.WriteString(out, text)
+	return err
 }
 
 func versionCommand(out io.Writer) *cobra.Command {

@@ -84,16 +84,30 @@ func (e Evidence) spacing() float64 {
 }
 
 // distorted reports whether the relaxed lattice carries any pattern worth the
-// name: one that moves a matrix element by a millionth of the hopping.
+// name.
 func (e Evidence) distorted() bool {
-	c, most := e.Chain, 0.0
-	for _, b := range e.Lattice.Stretch {
-		most = max(most, math.Abs(b*c.Bond.Coupling))
+	return e.carries(e.Chain.Bond, e.Lattice.Stretch) || e.carries(e.Chain.Site, e.Lattice.SiteMode)
+}
+
+// carries reports whether a branch moves a matrix element by a millionth of the
+// largest energy of the chain; less is what a converged relaxation may leave.
+func (e Evidence) carries(branch model.Phonon, pattern []float64) bool {
+	scale := max(e.Chain.Hopping, math.Abs(e.Chain.NextHopping))
+	for _, p := range []model.Phonon{e.Chain.Bond, e.Chain.Site} {
+		if p.Active() {
+			scale = max(scale, p.Coupling*p.Coupling/p.Stiffness)
+		}
 	}
-	for _, q := range e.Lattice.SiteMode {
-		most = max(most, math.Abs(q*c.Site.Coupling))
+	return branch.Coupling*largest(pattern) > 1e-6*scale
+}
+
+// largest returns the largest magnitude in x, 0 for none.
+func largest(x []float64) float64 {
+	most := 0.0
+	for _, v := range x {
+		most = max(most, math.Abs(v))
 	}
-	return most > 1e-6*c.Hopping
+	return most
 }
 
 func levelSpacing(e Evidence) (Doubt, bool) {
@@ -134,9 +148,8 @@ func linearCoupling(e Evidence) (Doubt, bool) {
 	if e.Lattice == nil || e.Lattice.Stretch == nil || c.Hopping == 0 {
 		return Doubt{}, false
 	}
-	most, flipped := 0.0, false
+	most, flipped := c.Bond.Coupling*largest(e.Lattice.Stretch)/c.Hopping, false
 	for _, b := range e.Lattice.Stretch {
-		most = max(most, math.Abs(c.Bond.Coupling*b)/c.Hopping)
 		flipped = flipped || c.Bond.Coupling*b > c.Hopping
 	}
 	why := "largest change of a hopping, |αb|/t: the coupling is linear in the stretch only while this is small"

@@ -43,7 +43,13 @@ func strongCoupling(e Evidence) (Doubt, bool) {
 const fastLimit = 0.3
 
 func fastLattice(e Evidence) (Doubt, bool) {
-	frequency := max(e.Chain.Bond.Frequency, e.Chain.Site.Frequency)
+	frequency := 0.0
+	if b := e.Chain.Bond; b.Active() {
+		frequency = b.Frequency * math.Sin(math.Pi*e.Chain.BandFilling()) // ω(q) = ω(π) sin(q/2), q = 2kF
+	}
+	if s := e.Chain.Site; s.Active() {
+		frequency = max(frequency, s.Frequency)
+	}
 	if frequency == 0 || e.Lattice == nil || math.IsNaN(e.Gap) || e.Gap <= 0 || !e.distorted() {
 		return Doubt{}, false
 	}
@@ -52,7 +58,7 @@ func fastLattice(e Evidence) (Doubt, bool) {
 		Verdict: verdict(frequency/e.Gap > fastLimit),
 		Value:   frequency / e.Gap,
 		Limit:   fastLimit,
-		Why:     "ħω/2Δ: the static lattice is slow beside the electrons only while this is small",
+		Why:     "ħω(2kF)/2Δ: the static lattice is slow beside the electrons only while this is small",
 		Source:  "common practice",
 	}, true
 }
@@ -61,27 +67,18 @@ const zeroPointLimit = 0.5
 
 // quantumLattice compares one mode's zero-point amplitude with the largest
 // static one: √(ħω/8K) of a bond-phonon mode at the zone boundary, √(ħω/2K_s)
-// of a local mode.
+// of a local mode. A branch that carries no pattern has nothing to compare.
 func quantumLattice(e Evidence) (Doubt, bool) {
 	c := e.Chain
-	if e.Lattice == nil || !e.distorted() {
+	if e.Lattice == nil {
 		return Doubt{}, false
 	}
-	ratio, ok := 0.0, false
-	compare := func(zeroPoint float64, pattern []float64) {
-		most := 0.0
-		for _, v := range pattern {
-			most = max(most, math.Abs(v))
-		}
-		if zeroPoint > 0 && most > 0 {
-			ratio, ok = max(ratio, zeroPoint/most), true
-		}
+	ratio := 0.0
+	if e.carries(c.Bond, e.Lattice.Stretch) {
+		ratio = math.Sqrt(c.Bond.Frequency/(8*c.Bond.Stiffness)) / largest(e.Lattice.Displacement)
 	}
-	if c.Bond.Active() {
-		compare(math.Sqrt(c.Bond.Frequency/(8*c.Bond.Stiffness)), e.Lattice.Displacement)
-	}
-	if c.Site.Active() {
-		compare(math.Sqrt(c.Site.Frequency/(2*c.Site.Stiffness)), e.Lattice.SiteMode)
+	if e.carries(c.Site, e.Lattice.SiteMode) {
+		ratio = max(ratio, math.Sqrt(c.Site.Frequency/(2*c.Site.Stiffness))/largest(e.Lattice.SiteMode))
 	}
 	return Doubt{
 		Name:    "quantum_lattice",
@@ -90,7 +87,7 @@ func quantumLattice(e Evidence) (Doubt, bool) {
 		Limit:   zeroPointLimit,
 		Why:     "zero-point amplitude of one mode against the static distortion",
 		Source:  "common practice",
-	}, ok
+	}, ratio > 0
 }
 
 func firstOrder(e Evidence) (Doubt, bool) {

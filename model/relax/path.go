@@ -71,12 +71,12 @@ const (
 )
 
 // minimise walks until the residual is within tolerance, no step goes down any
-// more, or the iterations are used up. The path must have been evaluated.
-func (one *path) minimise(ctx context.Context, set Settings, report func(*path)) error {
+// more, or that many iterations are used up, earlier ones included. The path must
+// have been evaluated.
+func (one *path) minimise(ctx context.Context, tolerance float64, iterations int, report func(*path)) error {
 	n := one.size()
 	direction, next, oldX, oldG := make([]float64, n), make([]float64, n), make([]float64, n), make([]float64, n)
-	one.steps = one.steps[:0]
-	for one.residual > set.Tolerance && one.iterations < set.MaxIterations {
+	for one.residual > tolerance && one.iterations < iterations {
 		if report != nil {
 			report(one)
 		}

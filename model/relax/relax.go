@@ -20,10 +20,7 @@ package relax
 
 import (
 	"context"
-	"fmt"
 	"math"
-	"runtime/debug"
-	"sync"
 
 	"example.org/twokf/model"
 	"example.org/twokf/model/fermi"
@@ -123,7 +120,7 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 	if prev := set.Previous; prev != nil && p.fits(prev) {
 		starts = append([]Seed{{Name: "previous", Stretch: prev.Stretch, SiteMode: prev.SiteMode}}, starts...)
 	}
-	paths, err := p.relaxAll(ctx, starts, set)
+	paths, err := p.race(ctx, starts, set)
 	if err != nil {
 		return nil, err
 	}
@@ -135,7 +132,7 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 	for try := 0; best.curvature < saddleCurvature && try < 2; try++ {
 		down, err := best.offSaddle(ctx)
 		if err == nil {
-			err = down.minimise(ctx, set, nil)
+			err = down.minimise(ctx, set.Tolerance, set.MaxIterations, nil)
 		}
 		if err != nil {
 			return nil, err
@@ -157,61 +154,6 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 		l.Tried = append(l.Tried, Attempt{one.name, one.free, one.residual, one.residual <= set.Tolerance, one.iterations})
 	}
 	return l, nil
-}
-
-// relaxAll relaxes every start, Jobs at a time, and returns the ends in the
-// order of the starts whatever finished first.
-func (p *problem) relaxAll(ctx context.Context, starts []Seed, set Settings) ([]*path, error) {
-	var (
-		lock     sync.Mutex
-		finished int
-		wait     sync.WaitGroup
-		paths    = make([]*path, len(starts))
-		errs     = make([]error, len(starts))
-		seats    = make(chan struct{}, max(1, set.Jobs))
-	)
-	ctx, cancel := context.WithCancel(ctx)
-	defer cancel()
-	report := func(one *path) {
-		if set.Progress == nil {
-			return
-		}
-		lock.Lock()
-		defer lock.Unlock()
-		set.Progress(Progress{one.name, finished, len(starts), one.iterations, one.residual, set.Tolerance})
-	}
-	for i, seed := range starts {
-		paths[i] = newPath(p, seed.Name)
-		seats <- struct{}{}
-		wait.Add(1)
-		go func() {
-			defer wait.Done()
-			defer func() { <-seats }()
-			defer func() {
-				if r := recover(); r != nil { // a panic in here would leave the user's terminal raw
-					errs[i] = fmt.Errorf("relax: start %q: %v\n%s", seed.Name, r, debug.Stack())
-					cancel()
-				}
-			}()
-			if errs[i] = paths[i].evaluate(ctx, p.vector(seed)); errs[i] == nil {
-				errs[i] = paths[i].minimise(ctx, set, report)
-			}
-			if errs[i] != nil {
-				cancel()
-			}
-			lock.Lock()
-			finished++
-			lock.Unlock()
-		}()
-	}
-	wait.Wait()
-	var first error
-	for _, err := range errs {
-		if err != nil && (first == nil || first == context.Canceled) {
-			first = err
-		}
-	}
-	return paths, first
 }
 
 // lowest picks the end of lowest free energy. Ends that are equal to rounding

@@ -22,14 +22,17 @@ const (
 	// dentWidth, in units of the coherence length 2t/Δ of the seed's gap, is the
 	// width of a dent that an extra electron may settle into.
 	dentWidth = 1.0
+	// longestRandom is the longest chain that is also started at random: in longer
+	// ones kinks freeze in and take hundreds of steps to end in a higher state.
+	longestRandom = 512
 	// largestPeriod of the commensurate patterns that are tried beside 2kF.
 	largestPeriod = 4
 )
 
 // Seeds returns the starts of a chain: 2kF patterns of two phases, a
 // neighbouring commensurate pattern with a dent (where an extra electron makes
-// a polaron or a kink), one branch at a time where both are coupled, and a
-// random pattern. The wave vector is that of the electrons on the chain.
+// a polaron or a kink), one branch at a time where both are coupled, and, for
+// chains that are not long, a random pattern. The wave vector is that of the electrons on the chain.
 func Seeds(c model.Chain) []Seed {
 	n, _ := c.Count()
 	if c.Sites < 2 || n == 0 || n == c.Spin*c.Sites {
@@ -48,7 +51,10 @@ func Seeds(c model.Chain) []Seed {
 	if near := commensurate(q); near != q && math.Abs(near-q)*float64(c.Sites) < 4*2*math.Pi {
 		seeds = append(seeds, s.dented("commensurate", near))
 	}
-	return append(seeds, s.random("random"))
+	if c.Sites <= longestRandom {
+		seeds = append(seeds, s.random("random"))
+	}
+	return seeds
 }
 
 // commensurate returns the wave vector 2πp/m, m ≤ largestPeriod, nearest to q.

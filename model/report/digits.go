@@ -6,9 +6,10 @@ import (
 	"strings"
 )
 
-// Digits prints v with at most sig significant digits and none finer than
-// grain: what is smaller than half the grain is "0". It never prints NaN; ±Inf
-// is "∞".
+// Digits prints v rounded to at most sig ≥ 1 significant digits, none of them
+// finer than the first digit of grain; what is smaller than half the grain is
+// "0". Very large and very small numbers get an exponent. It never prints NaN
+// ("–"); ±Inf is "∞".
 func Digits(v, grain float64, sig int) string {
 	switch {
 	case math.IsNaN(v):
@@ -21,16 +22,29 @@ func Digits(v, grain float64, sig int) string {
 		return "0"
 	}
 	if grain > 0 {
-		sig = max(1, min(sig, int(math.Floor(math.Log10(math.Abs(v)/grain)))+1))
+		_, first := scientific(grain, 1)
+		_, leading := scientific(v, 17)
+		if leading < first { // above half the grain: it rounds to one of it
+			v, leading = math.Copysign(math.Pow10(first), v), first
+		}
+		sig = min(sig, leading-first+1)
 	}
-	s := strconv.FormatFloat(v, 'e', sig-1, 64)
-	mantissa, exp, _ := strings.Cut(s, "e")
-	e, _ := strconv.Atoi(exp)
-	if e < -4 || e > 6 {
-		return strings.Replace(trimZeros(mantissa), "-", "−", 1) + "e" + strings.Replace(strconv.Itoa(e), "-", "−", 1)
+	mantissa, exponent := scientific(v, sig)
+	if exponent < -4 || exponent > 6 {
+		return minus(trimZeros(mantissa) + "e" + strconv.Itoa(exponent))
 	}
-	return strings.Replace(trimZeros(strconv.FormatFloat(v, 'f', max(0, sig-1-e), 64)), "-", "−", 1)
+	rounded, _ := strconv.ParseFloat(mantissa+"e"+strconv.Itoa(exponent), 64) // no digits left before the point either
+	return minus(trimZeros(strconv.FormatFloat(rounded, 'f', max(0, sig-1-exponent), 64)))
 }
+
+// scientific rounds v to sig digits and returns mantissa and decimal exponent.
+func scientific(v float64, sig int) (mantissa string, exponent int) {
+	mantissa, e, _ := strings.Cut(strconv.FormatFloat(v, 'e', sig-1, 64), "e")
+	exponent, _ = strconv.Atoi(e)
+	return mantissa, exponent
+}
+
+func minus(s string) string { return strings.ReplaceAll(s, "-", "−") }
 
 func trimZeros(s string) string {
 	if !strings.Contains(s, ".") {

@@ -164,6 +164,7 @@ var transitionStage = stage{
 	inputs: func(c model.Chain) model.Chain {
 		key := bulkOf(c)
 		key.Bond, key.Site = c.Bond, c.Site
+		key.Bond.Frequency, key.Site.Frequency = 0, 0 // masses do not move T_P
 		return key
 	},
 	keep: func(to, from *Portrait) { to.Transition = from.Transition },
