@@ -78,6 +78,23 @@ func TestResponseIsInfiniteAtTwoKF(t *testing.T) {
 	}
 }
 
+// Where q joins different pairs of Fermi points the logarithm diverges as well;
+// rounding of k ends it, and it must not turn into a difference of infinities.
+func TestResponseBetweenPairsOfFermiPoints(t *testing.T) {
+	for f := 0.01; f < 0.4; f += 0.001 {
+		b := band.Band{Hopping: 1, NextHopping: -0.6, Spin: 1, Filling: f}
+		k := b.FermiPoints()
+		if len(k) != 2 {
+			continue
+		}
+		r := bulk(t, b, 0)
+		at, beside := r.At(k[1]-k[0]), r.At((k[1]-k[0])*(1+1e-4))
+		if math.IsNaN(at.Site+at.Bond+at.Mixed) || math.IsInf(at.Site, 0) || at.Site < beside.Site {
+			t.Errorf("filling %v: χ is %+v at κ2 − κ1, %+v beside it", f, at, beside)
+		}
+	}
+}
+
 // χ0(q → 0) is the density of states, and the bond response follows with the
 // vertex 2cos k at the Fermi points (elementary).
 func TestUniformResponseIsTheDensityOfStates(t *testing.T) {

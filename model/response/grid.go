@@ -40,7 +40,7 @@ func (r *Bulk) Grid(n int) []float64 {
 
 // Peak returns where χ0(q, T) is highest, and its height: 2kF and +Inf at T = 0
 // in the band without t2. At finite T and fixed filling it stands beside 2kF.
-// When ctx ends first it returns what it has found so far.
+// When ctx ends first it returns 2kF and the height there.
 func (r *Bulk) Peak(ctx context.Context) (q, chi float64) {
 	const resolution = 200
 	q, chi, err := lowest(ctx, r.Grid(resolution), func(q float64) float64 { return -r.At(q).Site })

@@ -40,10 +40,14 @@ type branch struct {
 }
 
 // cosines returns cos k − cos(q/2) and cos k + cos(q/2) at the point from which
-// the branch departs; at a Fermi point accurate relative to themselves.
+// the branch departs, accurate relative to themselves where they vanish.
 func (on *branch) cosines(v *wavevector) (minus, plus complex128) {
-	if !on.Fermi {
-		return complex(on.CosNear-v.cos, 0), complex(on.CosNear+v.cos, 0)
+	switch {
+	case on.Fermi:
+	case on.Near == 0:
+		return complex((on.CosNear-1)+2*v.sin2*v.sin2, 0), complex(on.CosNear+v.cos, 0)
+	default:
+		return complex(on.CosNear-v.cos, 0), complex((on.CosNear+1)-2*v.sin2*v.sin2, 0)
 	}
 	away := (on.Near - v.half) / 2
 	s, c := math.Sincos(away)

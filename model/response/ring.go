@@ -51,7 +51,7 @@ func NewRing(n int, electrons float64, spin int, t, t2, T float64) (*Ring, error
 		}
 	}
 	scale := math.Abs(t) + math.Abs(t2)
-	if T < coldest*scale {
+	if T < smallestT*scale {
 		T, r.T = 0, 0
 	}
 	degenerate := 1e-12 * scale

@@ -52,7 +52,8 @@ func TestRingIsTheDefinition(t *testing.T) {
 		mu := ringMu(b, n, electrons/float64(b.Spin), T)
 		q := 2 * math.Pi * float64(m) / float64(n)
 		got, want := r.At(m), definition(b, mu, T, q, n, float64(m)/2)
-		if d := distance(got, want); !(d < 1e-10*want.Site) {
+		// μ by bisection is uncertain in the gap of a closed shell, where χ(0) is exponentially small.
+		if d := distance(got, want); !(d < 1e-10*want.Site+1e-12) {
 			rt.Errorf("χ(%d of %d) of %+v at T = %v is %+v, want %+v", m, n, b, T, got, want)
 		}
 	})

@@ -23,8 +23,10 @@ const Coldest = 1e-60
 // A temperature is 0 where there is no coupling, no filling, or where it would
 // lie below Coldest; firstQ is then the ordering vector. The temperature is
 // accurate to about 1e-12 of itself. An unstable interval between two stable
-// ones is found when it spans a factor of two in T. The error is that of ctx,
-// or names a parameter that is out of its range.
+// ones is found when it spans a factor of two in T. In a band with two pairs of
+// Fermi points a q that joins different pairs is followed down to about 1e-15 of
+// the band width only. The error is that of ctx, or names a parameter that is
+// out of its range.
 func Transition(ctx context.Context, c model.Chain) (at2kF, first, firstQ float64, err error) {
 	b := band.Of(c)
 	ordering := b.Ordering()
@@ -39,12 +41,12 @@ func Transition(ctx context.Context, c model.Chain) (at2kF, first, firstQ float6
 		return 0, 0, ordering, ctx.Err()
 	}
 	lo, hi := b.Edges()
-	coldest := Coldest * (hi - lo)
+	floor := Coldest * (hi - lo)
 	if lo == hi {
-		coldest = Coldest * hottest
+		floor = Coldest * hottest
 	}
 
-	at2kF, err = onset(ctx, hottest, coldest, func(T float64) (float64, error) {
+	at2kF, err = onset(ctx, hottest, floor, func(T float64) (float64, error) {
 		bulk, err := NewBulk(b, T)
 		if err != nil {
 			return 0, err
@@ -54,7 +56,7 @@ func Transition(ctx context.Context, c model.Chain) (at2kF, first, firstQ float6
 	if err != nil {
 		return 0, 0, ordering, err
 	}
-	first, err = onset(ctx, hottest, math.Max(at2kF, coldest), func(T float64) (float64, error) {
+	first, err = onset(ctx, hottest, math.Max(at2kF, floor), func(T float64) (float64, error) {
 		bulk, err := NewBulk(b, T)
 		if err != nil {
 			return 0, err
@@ -82,10 +84,10 @@ func Transition(ctx context.Context, c model.Chain) (at2kF, first, firstQ float6
 }
 
 // onset returns the highest temperature between hottest, where ratio > 0, and
-// coldest at which ratio is no longer positive; 0 if there is none. It steps
+// floor at which ratio is no longer positive; 0 if there is none. It steps
 // down by factors of two as long as ratio bends, and then follows the
 // logarithm, which is a straight line in ln T, to its zero.
-func onset(ctx context.Context, hottest, coldest float64, ratio func(T float64) (float64, error)) (float64, error) {
+func onset(ctx context.Context, hottest, floor float64, ratio func(T float64) (float64, error)) (float64, error) {
 	of := func(lnT float64) (float64, error) {
 		if err := ctx.Err(); err != nil {
 			return 0, err
@@ -96,7 +98,7 @@ func onset(ctx context.Context, hottest, coldest float64, ratio func(T float64) 
 		halvings  = 20    // 2^−20 hottest is far below every other energy
 		tolerance = 1e-13 // of ln T
 	)
-	above, end := math.Log(hottest), math.Log(coldest)
+	above, end := math.Log(hottest), math.Log(floor)
 	highValue, err := of(above)
 	if err != nil {
 		return 0, err
