@@ -15,7 +15,7 @@ import (
 // for them.
 var readoutOrder = []string{
 	"gap", "transition_temperature", "coupling", "displacement_amplitude", "site_mode_amplitude", "condensation_energy_per_site",
-	"softest_ratio", "softest_wavevector", "ordering_wavevector", "susceptibility_peak", "susceptibility_peak_wavevector",
+	"kinks", "softest_ratio", "softest_wavevector", "ordering_wavevector", "susceptibility_peak", "susceptibility_peak_wavevector",
 	"density_amplitude", "bond_order_amplitude", "energy_per_site", "fermi_velocity", "density_of_states", "chemical_potential",
 	"first_unstable_temperature", "first_unstable_wavevector", "coupling_bond", "coupling_site", "electron_energy_per_site", "lattice_energy_per_site", "fermi_wavevector",
 }
@@ -26,31 +26,61 @@ const kelvinPerEV = 1.602176634e-19 / 1.380649e-23
 // readoutDigits are the digits that a glance can take in.
 const readoutDigits = 4
 
-// readoutRows says the answers as sentences of numbers, as many as fit. A
-// number that is older than the knobs stands in parentheses.
-func (b *Bench) readoutRows(pic *picture, width, most int) []string {
-	answers := map[string]report.Answer{}
-	for _, a := range report.Answers(&pic.Portrait) {
-		answers[a.Name] = a
-	}
-	fresh := map[string]bool{}
-	if pic.fresh != nil {
-		for _, a := range report.Answers(pic.fresh) {
-			fresh[a.Name] = true
+// known is an answer as far as it is known: of the present chain, or of the one
+// before where that is older than the knobs.
+type known struct {
+	report.Answer
+	chain model.Chain // that it is an answer about
+	stale bool
+}
+
+// answers lists what is known, in the order of the report.
+func (b *Bench) answers() []known {
+	q := &b.inquiry
+	var out []known
+	at := map[string]int{}
+	if q.last != nil && !(q.fresh != nil && q.fresh.Complete) {
+		for _, a := range report.Answers(q.last) {
+			at[a.Name] = len(out)
+			out = append(out, known{a, q.last.Chain, true})
 		}
+	}
+	if q.fresh == nil {
+		return out
+	}
+	for _, a := range report.Answers(q.fresh) {
+		k := known{a, q.fresh.Chain, false}
+		if i, ok := at[a.Name]; ok {
+			out[i] = k
+		} else {
+			out = append(out, k)
+		}
+	}
+	return out
+}
+
+// aside sets what is visibly older than the knobs in parentheses.
+func (b *Bench) aside(stale bool, text string) string {
+	if stale && b.inquiry.lags() {
+		return "(" + text + ")"
+	}
+	return text
+}
+
+// readoutRows says the answers as sentences of numbers, as many as fit.
+func (b *Bench) readoutRows(width, most int) []string {
+	answers := map[string]known{}
+	for _, k := range b.answers() {
+		answers[k.Name] = k
 	}
 	var rows []string
 	line, used := "", 0
 	for _, name := range readoutOrder {
-		a, ok := answers[name]
+		k, ok := answers[name]
 		if !ok {
 			continue
 		}
-		text := a.Symbol + " " + answerText(a, pic.Chain)
-		if !fresh[name] && b.inquiry.slow {
-			text = "(" + text + ")"
-		}
-		text = b.spell(text)
+		text := b.spell(b.aside(k.stale, k.Symbol+" "+answerText(k.Answer, k.chain)))
 		w := ansi.StringWidth(text)
 		if used > 0 && used+3+w > width {
 			rows = append(rows, line)
@@ -100,7 +130,7 @@ func (b *Bench) doubtRows(pic *picture, width, most int) []string {
 		if pic.Doubts == nil {
 			text = ""
 		}
-		return []string{b.look.paint(inkAxis, text)}
+		return []string{b.look.paint(inkAxis, b.aside(pic.stale.doubts, text))}
 	}
 	names := make([]string, len(raised))
 	for i, d := range raised {
@@ -110,7 +140,7 @@ func (b *Bench) doubtRows(pic *picture, width, most int) []string {
 	if len(raised) == 1 {
 		plural = ""
 	}
-	text := fmt.Sprintf("%s%d doubt%s: %s", trouble, len(raised), plural, strings.Join(names, ", "))
+	text := trouble + b.aside(pic.stale.doubts, fmt.Sprintf("%d doubt%s: %s", len(raised), plural, strings.Join(names, ", ")))
 	rows := wrap(b.spell(text), width)
 	for _, d := range raised {
 		if len(rows) >= most {
@@ -120,7 +150,7 @@ func (b *Bench) doubtRows(pic *picture, width, most int) []string {
 	}
 	if len(rows) > most {
 		rows = rows[:most]
-		rows[most-1] = ansi.Truncate(rows[most-1], width-1, "") + b.spell("…")
+		rows[most-1] = b.cutOff(rows[most-1], width)
 	}
 	for i := range rows {
 		rows[i] = b.look.paint(inkRaised, rows[i])

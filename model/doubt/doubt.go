@@ -49,6 +49,9 @@ type Evidence struct {
 	Lattice *relax.Lattice
 	Gap     float64 // of the finite relaxed chain; NaN where there is none
 
+	Counted              bool // whether kinks are defined
+	Kinks, KinksDemanded int
+
 	CouplingBond, CouplingSite float64 // λ
 	WeakGap                    float64 // predicted gap of the infinite chain, weak coupling
 	TransitionTemperature      float64
@@ -66,6 +69,7 @@ var checks = []check{
 	electronNumber,
 	tooShortToDistort,
 	levelSpacing,
+	kinksLeft,
 	unstableRegion,
 	linearCoupling,
 	strongCoupling,

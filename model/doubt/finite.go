@@ -165,3 +165,14 @@ func linearCoupling(e Evidence) (Doubt, bool) {
 		Source:  "common practice",
 	}, true
 }
+
+func kinksLeft(e Evidence) (Doubt, bool) {
+	return Doubt{
+		Name:    "kinks_left",
+		Verdict: verdict(e.Kinks > e.KinksDemanded),
+		Value:   float64(e.Kinks),
+		Limit:   float64(e.KinksDemanded),
+		Why:     "sign changes of the order parameter against what the electrons and the length ask for: more are left over from a poor start",
+		Source:  "W. P. Su, J. R. Schrieffer, A. J. Heeger, Phys. Rev. B 22, 2099 (1980)",
+	}, e.Counted
+}

@@ -76,17 +76,21 @@ var questions = []question{
 	{"condensation_energy_per_site", "Econd/N", energy, "undistorted chain of the same size minus relaxed chain",
 		perSite(func(p *study.Portrait) float64 { return p.Lattice.Undistorted - p.Lattice.FreeEnergy })},
 	{"displacement_amplitude", "A[u]", length, "(2/N)|Σ u_j e^(−iQj)|, (1/N) at Q = π, Q = 2kF of the electrons on the chain",
-		amplitude(func(p *study.Portrait) (float64, bool) {
+		ofLattice(func(p *study.Portrait) (float64, bool) {
 			return p.Lattice.DisplacementAmplitude, p.Lattice.Displacement != nil
 		})},
 	{"site_mode_amplitude", "A[q]", pure, "the same of the local mode",
-		amplitude(func(p *study.Portrait) (float64, bool) {
+		ofLattice(func(p *study.Portrait) (float64, bool) {
 			return p.Lattice.SiteModeAmplitude, p.Lattice.SiteMode != nil
 		})},
 	{"density_amplitude", "A[n]", pure, "the same of the density, spins summed",
 		fromLattice(func(p *study.Portrait) float64 { return p.Lattice.DensityAmplitude })},
 	{"bond_order_amplitude", "A[p]", pure, "the same of ⟨c†_{i+1}c_i + h.c.⟩, spins summed",
 		fromLattice(func(p *study.Portrait) float64 { return p.Lattice.BondOrderAmplitude })},
+	{"kinks", "kinks", pure, "sign changes of the period-2 order parameter, near half filling",
+		ofLattice(func(p *study.Portrait) (float64, bool) {
+			return float64(p.Lattice.Kinks), p.Lattice.Counted
+		})},
 	{"susceptibility_peak_wavevector", "q(χmax)", wavevector, "where the static χ0(q, T) of the infinite chain is highest",
 		fromResponse(func(p *study.Portrait) float64 { return p.Response.PeakQ })},
 	{"susceptibility_peak", "χmax", perEnergy, "highest value of the static χ0(q, T) of the infinite chain",
@@ -173,7 +177,7 @@ func perSite(value func(*study.Portrait) float64) func(*study.Portrait) (float64
 	return fromLattice(func(p *study.Portrait) float64 { return value(p) / float64(p.Chain.Sites) })
 }
 
-func amplitude(value func(*study.Portrait) (float64, bool)) func(*study.Portrait) (float64, bool) {
+func ofLattice(value func(*study.Portrait) (float64, bool)) func(*study.Portrait) (float64, bool) {
 	return func(p *study.Portrait) (float64, bool) {
 		if p.Lattice == nil {
 			return 0, false

@@ -30,6 +30,7 @@ func (p *Portrait) evidence() doubt.Evidence {
 	}
 	if p.Lattice != nil {
 		e.Lattice, e.Gap = p.Lattice.Lattice, p.Lattice.Gap
+		e.Counted, e.Kinks, e.KinksDemanded = p.Lattice.Counted, p.Lattice.Kinks, p.Lattice.KinksDemanded
 	}
 	if p.Transition != nil {
 		e.CouplingBond, e.CouplingSite = p.Transition.CouplingBond, p.Transition.CouplingSite

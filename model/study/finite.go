@@ -70,6 +70,7 @@ func (in *inquiry) measure(l *relax.Lattice) *Lattice {
 	if gap := l.Electrons.Lowest - l.Electrons.Highest; !math.IsInf(gap, 0) {
 		out.Gap = gap
 	}
+	out.Kinks, out.KinksDemanded, out.Counted = relax.Kinks(c, l)
 	return out
 }
 

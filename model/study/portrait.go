@@ -89,6 +89,9 @@ type Lattice struct {
 	Ordering                                                                       float64 // wave vector Q of the amplitudes, 2kF of the electrons actually on the chain
 	DisplacementAmplitude, SiteModeAmplitude, DensityAmplitude, BondOrderAmplitude float64 // A_Q
 	Gap                                                                            float64 // lowest unoccupied − highest occupied
+
+	Counted              bool // whether kinks are defined here: a distorted chain near half filling
+	Kinks, KinksDemanded int
 }
 
 // Levels are the one-electron levels of the relaxed chain.

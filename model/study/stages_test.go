@@ -1,0 +1,209 @@
+package study_test
+
+import (
+	"context"
+	"slices"
+	"strings"
+	"testing"
+
+	"pgregory.net/rapid"
+
+	"example.org/twokf/model"
+	"example.org/twokf/model/relax"
+	"example.org/twokf/model/study"
+	"example.org/twokf/presets"
+)
+
+// What a stage declares as its inputs is all that it depends on: a chain that
+// differs from another in one parameter and in none of a stage's inputs has, to
+// the last bit, the same part of the portrait.
+func TestInputsCoverDependences(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		a := anyChain(10).Draw(t, "chain")
+		b := changed(t, a)
+		p, q := portraitOf(t, a), portraitOf(t, b)
+		for _, stage := range study.Stages() {
+			if !study.SameInputs(stage, a, b) {
+				continue
+			}
+			if d := difference(study.PartOf(stage, p), study.PartOf(stage, q)); d != "" {
+				t.Errorf("%s: equal inputs, different answers: %s\n%+v\n%+v", stage, d, a, b)
+			}
+		}
+	})
+}
+
+// A study that builds on an earlier one takes over a part exactly when the
+// stage's inputs are equal, and its numbers are those of a study from nothing.
+// The relaxed chain may be lower: the earlier lattice is one more start.
+func TestReuseGivesTheSameNumbers(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		a := anyChain(10).Draw(t, "chain")
+		b := changed(t, a)
+		before := portraitOf(t, a)
+		after, err := study.Run(context.Background(), b, study.Settings{Previous: before})
+		if err != nil {
+			t.Fatal(err)
+		}
+		fresh := portraitOf(t, b)
+		for _, stage := range study.Stages() {
+			if stage == "doubts" {
+				continue // always weighed anew
+			}
+			kept := onlyPart(before, stage) == onlyPart(after, stage)
+			if same := study.SameInputs(stage, a, b); kept != same && onlyPart(fresh, stage) != nil {
+				t.Errorf("%s: inputs equal: %v, part taken over: %v", stage, same, kept)
+			}
+			if stage == "lattice" || stage == "levels" {
+				continue
+			}
+			if d := difference(study.PartOf(stage, fresh), study.PartOf(stage, after)); d != "" {
+				t.Errorf("%s: %s", stage, d)
+			}
+		}
+		energy := max(b.Hopping, 1) * float64(b.Sites)
+		if gain := after.Lattice.FreeEnergy - fresh.Lattice.FreeEnergy; after.Lattice.Converged && gain > 1e-8*energy {
+			t.Errorf("with the earlier lattice as one more start the free energy is %g higher", gain)
+		}
+	})
+}
+
+// onlyPart returns the part that a stage contributes, nil where there is none.
+func onlyPart(p *study.Portrait, stage string) any {
+	switch {
+	case stage == "band" && p.Band != nil:
+		return p.Band
+	case stage == "response" && p.Response != nil:
+		return p.Response
+	case stage == "phonon" && p.Phonon != nil:
+		return p.Phonon
+	case stage == "lattice" && p.Lattice != nil:
+		return p.Lattice
+	case stage == "levels" && p.Levels != nil:
+		return p.Levels
+	case stage == "transition" && p.Transition != nil:
+		return p.Transition
+	}
+	return nil
+}
+
+// Turning one knob redoes what hangs on it and nothing else.
+func TestWhatAKnobRedoes(t *testing.T) {
+	openChain, err := model.SetAll(mixed(t), []string{"chain.boundary=open"})
+	if err != nil {
+		t.Fatal(err)
+	}
+	byNumber, err := model.SetAll(mixed(t), []string{"electrons.electrons=114"})
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, turn := range []struct {
+		chain       model.Chain
+		assignments string // separated by blanks
+		redone      string
+	}{
+		{mixed(t), "title=other", ""},
+		{mixed(t), "source=invented_again", ""},
+		{mixed(t), "energy=t", ""},
+		{mixed(t), "chain.spacing=4", ""},
+		{mixed(t), "conditions.temperature=0.01", "response phonon lattice levels"},
+		{mixed(t), "chain.sites=200", "response lattice levels"},
+		{openChain, "chain.sites=200", "lattice levels"},
+		{mixed(t), "chain.boundary=open", "response lattice levels"},
+		{byNumber, "chain.sites=200", "band response phonon lattice levels transition"},
+		{mixed(t), "electrons.electrons=114", ""}, // what the filling asks for
+		{mixed(t), "electrons.electrons=118", "band response phonon lattice levels transition"},
+		{mixed(t), "electrons.filling=0.601", "band response phonon transition"}, // 114.19 electrons: still 114
+		{mixed(t), "electrons.hopping=0.3", "band response phonon lattice levels transition"},
+		{mixed(t), "electrons.next_hopping=0.01", "band response phonon lattice levels transition"},
+		{mixed(t), "electrons.spin=1", "band response phonon lattice levels transition"},
+		{mixed(t), "bond_phonon.coupling=0.7", "phonon lattice levels transition"},
+		{mixed(t), "site_phonon.stiffness=1.1", "phonon lattice levels transition"},
+		{mixed(t), "bond_phonon.frequency=0.02", "phonon"},
+		{mixed(t), "site_phonon.frequency=0", "phonon"},
+		{mixed(t), "bond_phonon=off", "phonon lattice levels transition"},
+	} {
+		t.Run(turn.assignments, func(t *testing.T) {
+			after, err := model.SetAll(turn.chain, strings.Fields(turn.assignments))
+			if err != nil {
+				t.Fatal(err)
+			}
+			var redone []string
+			for _, stage := range study.Stages() {
+				if stage != "doubts" && !study.SameInputs(stage, turn.chain, after) {
+					redone = append(redone, stage)
+				}
+			}
+			if !slices.Equal(redone, strings.Fields(turn.redone)) {
+				t.Errorf("redone: %v, expected %s", redone, turn.redone)
+			}
+		})
+	}
+}
+
+func mixed(t *testing.T) model.Chain {
+	t.Helper()
+	c, err := presets.Get("mixed")
+	if err != nil {
+		t.Fatal(err)
+	}
+	return c
+}
+
+// The doubts are weighed in every study, also where nothing else is done.
+func TestDoubtsAreAlwaysWeighed(t *testing.T) {
+	c := mixed(t)
+	before := portraitOf(t, c)
+	c.Title = "under another name"
+	after, err := study.Run(context.Background(), c, study.Settings{Previous: before})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if after.Chain != c || !after.Complete || len(after.Doubts) == 0 || &after.Doubts[0] == &before.Doubts[0] {
+		t.Error("the doubts are those of the earlier portrait")
+	}
+	if d := difference(before.Doubts, after.Doubts); d != "" {
+		t.Error(d)
+	}
+}
+
+// The number of cores changes no number.
+func TestCoresChangeNothing(t *testing.T) {
+	c := mixed(t)
+	c.Sites = 50
+	one := portraitOf(t, c)
+	four, err := study.Run(context.Background(), c, study.Settings{Jobs: 4})
+	if err != nil {
+		t.Fatal(err)
+	}
+	four.Seconds = one.Seconds
+	if d := difference(one, four); d != "" {
+		t.Error(d)
+	}
+}
+
+// An earlier lattice leads on: where the chain has two minima, a small change
+// keeps the one it is in only if that is the lower one.
+func TestEarlierLatticeIsOneMoreStart(t *testing.T) {
+	c := halfFilledRing(true, 60, 0.4)
+	before := portraitOf(t, c)
+	c.Temperature = 0.01
+	after, err := study.Run(context.Background(), c, study.Settings{Previous: before})
+	if err != nil {
+		t.Fatal(err)
+	}
+	started := func(p *study.Portrait) bool {
+		return slices.ContainsFunc(p.Lattice.Tried, func(a relax.Attempt) bool { return a.Name == "previous" })
+	}
+	if !started(after) || started(portraitOf(t, c)) {
+		t.Error("the earlier lattice should be a start of the later study, and of that only")
+	}
+	c.Sites = 62
+	longer, err := study.Run(context.Background(), c, study.Settings{Previous: before})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if started(longer) {
+		t.Error("a lattice of 60 sites should not be a start for 62")
+	}
+}
