@@ -1,102 +1,117 @@
 package fermi
 
 import (
-	"context"
 	"math"
-	"math/rand/v2"
+	"sort"
 	"testing"
-	"time"
+
+	"gonum.org/v1/gonum/mat"
+	"pgregory.net/rapid"
 )
 
-func TestCountScratch(t *testing.T) {
-	rng := rand.New(rand.NewPCG(1, 2))
-	worst := map[string]float64{}
-	for trial := range 400 {
-		n := 1 + rng.IntN(80)
-		if trial < 10 {
-			n = 200
+// Counting against the levels of gonum v0.17.0, at energies drawn at random and
+// close beside the levels, where elimination is nearly singular.
+func TestCountsAgreeWithDiagonalisation(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		h := drawChain(t, 1, 40)
+		var e mat.EigenSym
+		if !e.Factorize(matrix(h), false) {
+			t.Fatal("no convergence")
 		}
-		h := &Hamiltonian{Site: make([]float64, n), Ring: rng.IntN(2) == 0}
-		h.Bond = make([]float64, n-1)
-		if h.Ring {
-			h.Bond = make([]float64, n)
-		}
-		kind := rng.IntN(4)
-		for i := range h.Bond {
-			h.Bond[i] = 1
-			switch kind {
-			case 1:
-				h.Bond[i] += 0.2 * float64(1-2*(i%2))
-			case 2:
-				h.Bond[i] = 1 + 0.3*rng.NormFloat64()
+		level := e.Values(nil)
+		n := len(level)
+		var c counter
+		c.reset(h)
+		const near = 1e-11
+		var energy [lanes]float64
+		for l := range energy {
+			energy[l] = drawEnergy(t, "energy") * 2
+			if l%2 == 0 {
+				energy[l] = level[rapid.IntRange(0, n-1).Draw(t, "level")] + rapid.SampledFrom([]float64{-near, near}).Draw(t, "beside")
 			}
 		}
-		for i := range h.Site {
-			if kind >= 2 {
-				h.Site[i] = rng.NormFloat64()
+		var number [lanes]int
+		c.below(&energy, &number)
+		for l, x := range energy {
+			// Levels within rounding of the energy may count either way.
+			least := sort.SearchFloat64s(level, x-near/2)
+			most := sort.SearchFloat64s(level, x+near/2)
+			if number[l] < least || number[l] > most {
+				t.Errorf("%d levels below %.15g, want %d to %d", number[l], x, least, most)
 			}
 		}
-		if rng.IntN(2) == 0 {
-			h.Next = 0.3
+	})
+}
+
+// A uniform ring has pairs of levels −2 cos k, and parts of it have levels at
+// the same energies: the hardest case for elimination. Closed form.
+func TestCountsBesidePairsOfLevels(t *testing.T) {
+	for _, n := range []int{12, 60, 300, 3000} {
+		for _, next := range []float64{0, 0.2} {
+			h := uniform(n, true, 1)
+			h.Next = next
+			level := make([]float64, n)
+			for k := range n {
+				q := 2 * math.Pi * float64(k) / float64(n)
+				level[k] = -2*math.Cos(q) - 2*next*math.Cos(2*q)
+			}
+			sort.Float64s(level)
+			var c counter
+			c.reset(h)
+			for _, m := range []int{1, 3, 4, 6} { // k = 2π/m·j is a level of every ring here
+				for _, beside := range []float64{-1e-9, -1e-11, 1e-11, 1e-9} {
+					q := 2 * math.Pi / float64(m)
+					x := -2*math.Cos(q) - 2*next*math.Cos(2*q) + beside
+					var energy [lanes]float64
+					for l := range energy {
+						energy[l] = x
+					}
+					var number [lanes]int
+					c.below(&energy, &number)
+					if want := sort.SearchFloat64s(level, x); number[0] != want {
+						t.Errorf("%d sites, next %g: %d levels below %.15g, want %d", n, next, number[0], x, want)
+					}
+				}
+			}
 		}
-		var s Solver
-		levels, err := s.Levels(context.Background(), nil, h)
-		if err != nil {
+	}
+}
+
+func TestBoundsHoldEveryLevel(t *testing.T) {
+	rapid.Check(t, func(t *rapid.T) {
+		h := drawChain(t, 1, 20)
+		var e mat.EigenSym
+		if !e.Factorize(matrix(h), false) {
+			t.Fatal("no convergence")
+		}
+		level := e.Values(nil)
+		lo, hi := h.Bounds()
+		if slack := 1e-13 * (1 + hi - lo); level[0] < lo-slack || level[len(level)-1] > hi+slack {
+			t.Errorf("levels %.15g to %.15g, bounds %.15g to %.15g", level[0], level[len(level)-1], lo, hi)
+		}
+	})
+	// The bounds of an open chain are not those of a ring: its ends have one neighbour.
+	if lo, hi := uniform(2, false, 1).Bounds(); lo != -1 || hi != 1 {
+		t.Errorf("two sites: bounds %g, %g, want -1, 1", lo, hi)
+	}
+}
+
+// All levels against gonum v0.17.0.
+func TestLevelsAgreeWithDiagonalisation(t *testing.T) {
+	var s Solver
+	var got []float64
+	rapid.Check(t, func(t *rapid.T) {
+		h := drawChain(t, 1, 60)
+		var e mat.EigenSym
+		if !e.Factorize(matrix(h), false) {
+			t.Fatal("no convergence")
+		}
+		var err error
+		if got, err = s.Levels(t.Context(), got, h); err != nil {
 			t.Fatal(err)
 		}
-		var c counter
-		c.reset(h)
-		lo, hi := h.Bounds()
-		name := "open"
-		if h.Ring {
-			name = "ring"
+		if d := farthest(got, e.Values(nil)); len(got) != len(h.Site) || !(d <= 1e-12) {
+			t.Errorf("%d levels of %d differ by %g", len(got), len(h.Site), d)
 		}
-		if h.Next != 0 {
-			name += "next"
-		}
-		for k := range n {
-			a, b := lo-1, hi+1
-			for range 60 {
-				m := (a + b) / 2
-				var e [lanes]float64
-				var num [lanes]int
-				for i := range e {
-					e[i] = m
-				}
-				c.below(&e, &num)
-				if num[0] > k {
-					b = m
-				} else {
-					a = m
-				}
-			}
-			d := math.Abs(a - levels[k])
-			if d > worst[name] {
-				worst[name] = d
-				t.Log(name, kind, n, k, d)
-			}
-		}
-	}
-	for _, ring := range []int{0, 1, 2, 3} {
-		n := 1000
-		h := &Hamiltonian{Site: make([]float64, n), Bond: make([]float64, n-1), Ring: ring%2 == 1}
-		if h.Ring {
-			h.Bond = make([]float64, n)
-		}
-		for i := range h.Bond {
-			h.Bond[i] = 1 + 0.1*rng.NormFloat64()
-		}
-		if ring > 1 {
-			h.Next = .1
-		}
-		var c counter
-		c.reset(h)
-		e := [lanes]float64{-.3, -.2, -.1, -.05, .03, .1, .2, .3}
-		var num [lanes]int
-		t0 := time.Now()
-		for range 100 {
-			c.below(&e, &num)
-		}
-		t.Log(ring, time.Since(t0)/100, "per 8x1000")
-	}
+	})
 }

@@ -43,5 +43,5 @@ type State struct {
 	Energy     float64 // Σ f ε
 	Entropy    float64 // k_B = 1; at T = 0 it is 0
 	FreeEnergy float64 // Energy − T·Entropy, at fixed electron number
-	Method     string  // "dense" or "poles"
+	Method     string  // "dense", "poles", or "waves" for a uniform ring
 }

@@ -61,6 +61,7 @@ func (w *sweep) balanced(h *Hamiltonian, bond []float64) {
 	det.settle()
 	det.addTo(&w.log, 1)
 	bond[last-1] += 2 * half * p
+	end := b // g_{n−1}
 
 	w.fadeReal(h, last-1, left, &b)
 	w.backwardReal(h, last-1, left, &g, bond)
@@ -68,6 +69,7 @@ func (w *sweep) balanced(h *Hamiltonian, bond []float64) {
 	p = 0
 	for l, a := range w.weight {
 		p -= a * b[l]
+		w.miss(l, (w.shift[l]*sigma[l]+half*h.Bond[last-1]*end[l]-h.Bond[last]*b[l]-1)*sigma[l])
 	}
 	bond[last] += 2 * p
 }

@@ -1,6 +1,9 @@
 package fermi
 
-import "math"
+import (
+	"math"
+	"math/cmplx"
+)
 
 // nextInverse is the workspace for chains with second-neighbour hopping, one
 // pole at a time. A = z − H is a band matrix with two off-diagonals; the last
@@ -16,18 +19,20 @@ type nextSite struct {
 }
 
 // add adds a Re G_ii to density and 2a Re G_{i,i+1} to bond and returns
-// ln |det A| and Σ_i Re G_{i,i+2}, where G = A⁻¹ and
+// ln |det A|, Σ_i Re G_{i,i+2} and an estimate of the error of G, where G = A⁻¹
+// and
 //
 //	A = L D Lᵀ,   L_{j,i} = A'_{j,i}/d_i,   A'_{j,k} = A_{j,k} − Σ_{i<k} L_{j,i} d_i L_{k,i} (j ≥ k),
 //	G_{i,k} = −Σ_{j>i} L_{j,i} G_{j,k} (k > i),   G_ii = 1/d_i − Σ_{j>i} L_{j,i} G_{j,i}
 //
 // (K. Takahashi, J. Fagan, M. Chin, 8th PICA Conference, 1973; from memory).
 // A ring has at least five sites.
-func (x *nextInverse) add(h *Hamiltonian, z complex128, a float64, density, bond []float64) (log, order float64) {
+func (x *nextInverse) add(h *Hamiltonian, z complex128, a float64, density, bond []float64) (log, order, miss float64) {
 	n := len(h.Site)
 	x.site = resize(x.site, n)
 	t := complex(h.Next, 0)
 	var pp, pq, qq complex128 // the block of the border
+	var row complex128        // A G in its last row, see ring
 	var p, q [3]complex128    // coupling of sites i, i+1, i+2 to it
 	if h.Ring {
 		n -= 2
@@ -85,6 +90,7 @@ func (x *nextInverse) add(h *Hamiltonian, z complex128, a float64, density, bond
 		density[n] += a * real(pp)
 		density[n+1] += a * real(qq)
 		bond[n] += 2 * a * real(pq)
+		row = (z-complex(h.Site[n+1], 0))*qq + complex(h.Bond[n], 0)*pq
 	}
 	log = 0.5 * (math.Log(det) + math.Ln2*float64(exponent))
 
@@ -102,6 +108,9 @@ func (x *nextInverse) add(h *Hamiltonian, z complex128, a float64, density, bond
 			q0 := -(s.near*q1 + s.far*q2 + s.p*pq + s.q*qq)
 			g -= s.p*p0 + s.q*q0
 			p1, p2, q1, q2 = p0, p1, q0, q1
+			if i == n-1 {
+				row += t * q0
+			}
 		}
 		g -= s.near*g1 + s.far*g2
 		density[i] += a * real(g)
@@ -121,8 +130,10 @@ func (x *nextInverse) add(h *Hamiltonian, z complex128, a float64, density, bond
 	if h.Ring {
 		bond[n+1] += 2 * a * real(q1)
 		order += real(p1) + real(q2)
+		row += complex(h.Bond[n+1], 0)*q1 + t*q2 - 1
+		miss = cmplx.Abs(row) * cmplx.Abs(qq)
 	}
-	return log, order
+	return log, order, miss
 }
 
 // reciprocal returns 1/z for a z that is far from overflow.

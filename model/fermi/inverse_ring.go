@@ -1,5 +1,7 @@
 package fermi
 
+import "math"
+
 // A border is what a sweep carries along a ring besides the open chain: the
 // last site B and what couples to it.
 type border struct {
@@ -16,6 +18,11 @@ type border struct {
 //	G_{i,i+1} = l G_{i+1,i+1} + m_i G_{i+1,B},   l = β_i e_i,
 //	G_iB = l G_{i+1,B} + m_i G_BB,
 //	G_ii = e_i + l G_{i,i+1} + m_i G_iB.
+//
+// When a level lies within s of μ and the open chain has one there too, as with
+// the pairs of a uniform ring, 1/G_BB is small and cancels out of numbers of
+// order 1/s. Then the last row of (z − H) G = 1, which the substitution comes
+// back to in the end, is missed by the relative error of G_BB.
 //
 // Couplings to B fade away from either end, in a gap exponentially; where they
 // have, the chain is open.
@@ -53,6 +60,7 @@ func (w *sweep) ring(h *Hamiltonian, density, bond []float64) {
 		nn += a * gr[l]
 		p += a * b.gr[l]
 	}
+	end := b // holds G_{n−1,B}
 	det.settle()
 	det.addTo(&w.log, 0.5)
 	density[last] += n
@@ -63,8 +71,13 @@ func (w *sweep) ring(h *Hamiltonian, density, bond []float64) {
 	w.backward(h, last-1, left, &gr, &gi, density, bond)
 	w.backwardBorder(h, left, &gr, &gi, &b, density, bond)
 	p = 0
+	x, y, z := w.mu-h.Site[last], h.Bond[last-1], h.Bond[last]
 	for l, a := range w.weight {
 		p += a * b.gr[l]
+		s := w.shift[l]
+		re := x*b.sr[l] - s*b.si[l] + y*end.gr[l] + z*b.gr[l] - 1
+		im := x*b.si[l] + s*b.sr[l] + y*end.gi[l] + z*b.gi[l]
+		w.miss(l, math.Hypot(re, im)*math.Hypot(b.sr[l], b.si[l]))
 	}
 	bond[last] += 2 * p
 }

@@ -1,159 +1,103 @@
 package fermi
 
 import (
-	"context"
 	"math"
-	"math/rand/v2"
 	"testing"
 )
 
-func TestPolesScratch(t *testing.T) {
-	rng := rand.New(rand.NewPCG(3, 4))
-	worst := map[string]float64{}
-	sp := Solver{Method: Poles}
-	sd := Solver{Method: Dense}
-	for trial := range 1000 {
-		n := 5 + rng.IntN(100)
-		h := &Hamiltonian{Site: make([]float64, n), Ring: rng.IntN(2) == 0}
-		h.Bond = make([]float64, n-1)
-		if h.Ring {
-			h.Bond = make([]float64, n)
-		}
-		kind := rng.IntN(5)
-		for i := range h.Bond {
-			h.Bond[i] = 1
-			switch kind {
-			case 1:
-				h.Bond[i] += 0.2 * float64(1-2*(i%2))
-			case 2, 4:
-				h.Bond[i] = 1 + 0.3*rng.NormFloat64()
+// f(x) must be 1 below and 0 above a gap of ±m, to the tolerance, all over
+// m ≤ |x| ≤ M (on a logarithmic grid), and ω(x) = min(x, 0).
+func TestZolotarevStep(t *testing.T) {
+	const M = 2
+	for _, m := range []float64{2, 1.9, 1, 0.3, 1e-2, 1e-4, 1e-6, 1e-9} {
+		for _, tol := range []float64{1e-6, poleTolerance} {
+			var p poles
+			if !p.zolotarev(m, M, tol) {
+				t.Errorf("gap ±%g: no poles", m)
+				continue
 			}
-		}
-		for i := range h.Site {
-			if kind >= 2 && kind < 4 {
-				h.Site[i] = rng.NormFloat64()
-			}
-		}
-		if rng.IntN(2) == 0 && kind != 4 {
-			h.Next = 0.3
-		}
-		occ := Occupation{Electrons: float64(rng.IntN(2*n + 1)), Spin: 2}
-		if kind == 4 {
-			occ.Electrons = float64(n)
-		}
-		if rng.IntN(2) == 0 {
-			occ.Temperature = math.Pow(10, 2-6*rng.Float64())
-		}
-		var a, b State
-		if err := sd.Solve(context.Background(), h, occ, &a); err != nil {
-			t.Fatal(err)
-		}
-		sp.RoughEdges = rng.IntN(2) == 0
-		if err := sp.Solve(context.Background(), h, occ, &b); err != nil {
-			t.Fatal(err)
-		}
-		if b.Method != "poles" || a.Method != "dense" {
-			t.Fatal("method")
-		}
-		name := "open"
-		if h.Ring {
-			name = "ring"
-		}
-		if h.Next != 0 {
-			name += "next"
-		}
-		if kind == 4 {
-			name += "half"
-		}
-		if occ.Temperature > 0 {
-			name += "/warm"
-			if st := math.Abs(a.Entropy-b.Entropy) / float64(n); st*occ.Temperature > worst["TS"+name] {
-				worst["TS"+name] = st * occ.Temperature
-				t.Log("TS", name, kind, n, occ, a.Entropy, b.Entropy, a.Energy-b.Energy, a.FreeEnergy-b.FreeEnergy, a.Highest, a.Lowest, a.OpenShell)
-			}
-		} else if b.OpenShell {
-			name += "/shell"
-		}
-		if a.OpenShell != b.OpenShell {
-			t.Errorf("%d %s kind %d n %d occ %v %v %v", trial, name, kind, n, occ, a.Highest-a.Lowest, b.Highest-b.Lowest)
-		}
-		var d float64
-		for i := range a.Density {
-			d = max(d, math.Abs(a.Density[i]-b.Density[i]))
-		}
-		for i := range a.BondOrder {
-			d = max(d, math.Abs(a.BondOrder[i]-b.BondOrder[i]))
-		}
-		if d > worst[name] {
-			worst[name] = d
-			t.Log(name, kind, n, "rho", d, occ)
-		}
-		e := max(math.Abs(a.Energy-b.Energy), math.Abs(a.FreeEnergy-b.FreeEnergy)/(1+occ.Temperature)) / float64(n)
-		if e > worst["E"+name] {
-			worst["E"+name] = e
-			t.Log(name, kind, n, "E", e)
-		}
-		if !sp.RoughEdges && !math.IsInf(a.Highest, 0) && !math.IsInf(a.Lowest, 0) {
-			d = math.Abs(a.Highest-b.Highest) + math.Abs(a.Lowest-b.Lowest)
-			if d > worst["edges"+name] {
-				worst["edges"+name] = d
-				t.Log(name, kind, n, "edges", d)
-			}
-		}
-	}
-	for k, v := range worst {
-		t.Log(k, v)
-	}
-}
-
-func gapped(n int) *Hamiltonian {
-	h := &Hamiltonian{Site: make([]float64, n), Bond: make([]float64, n), Ring: true}
-	for i := range h.Bond {
-		h.Bond[i] = 1 + 0.075*float64(1-2*(i%2)) + 0.001*math.Sin(float64(i))
-		h.Site[i] = 0.01 * math.Cos(float64(i))
-	}
-	return h
-}
-
-func benchmarkSolve(b *testing.B, n int, rough bool, extra int) {
-	h := gapped(n)
-	s := Solver{RoughEdges: rough}
-	var st State
-	b.ReportAllocs()
-	occ := Occupation{Electrons: float64(n + extra), Spin: 2}
-	k := 0
-	for b.Loop() {
-		k++
-		h.Bond[k%n] *= 1 + 1e-4*float64(k%3-1)
-		if err := s.Solve(context.Background(), h, occ, &st); err != nil {
-			b.Fatal(err)
-		}
-	}
-}
-func BenchmarkRough200(b *testing.B)    { benchmarkSolve(b, 200, true, 0) }
-func BenchmarkSharp200(b *testing.B)    { benchmarkSolve(b, 200, false, 0) }
-func BenchmarkRough1000(b *testing.B)   { benchmarkSolve(b, 1000, true, 0) }
-func BenchmarkSharp1000(b *testing.B)   { benchmarkSolve(b, 1000, false, 0) }
-func BenchmarkRough10000(b *testing.B)  { benchmarkSolve(b, 10000, true, 0) }
-func BenchmarkRough100000(b *testing.B) { benchmarkSolve(b, 100000, true, 0) }
-
-func BenchmarkHalf(b *testing.B) {
-	for _, n := range []int{200, 1000, 10000, 100000} {
-		h := gapped(n)
-		clear(h.Site)
-		s := Solver{RoughEdges: true}
-		var st State
-		occ := Occupation{Electrons: float64(n), Spin: 2}
-		k := 0
-		b.Run("", func(b *testing.B) {
-			for b.Loop() {
-				k++
-				h.Bond[k%n] *= 1 + 1e-4*float64(k%3-1)
-				if err := s.Solve(context.Background(), h, occ, &st); err != nil {
-					b.Fatal(err)
+			for j := range 2001 {
+				x := m * math.Pow(M/m, float64(j)/2000)
+				if e := math.Abs(1-p.odd(x)) / 2; e > tol+1e-15 {
+					t.Errorf("gap ±%g: error %g of f(%g), want at most %g", m, e, x, tol)
+					break
+				}
+				if e := math.Abs(p.grand(x)); e > tol*M {
+					t.Errorf("gap ±%g: error %g of ω(%g)", m, e, x)
+					break
 				}
 			}
-		})
+		}
 	}
 }
-func BenchmarkPolaron200(b *testing.B) { benchmarkSolve(b, 200, true, 1) }
+
+// grand returns ω(x), x > 0, as the poles have it.
+func (p *poles) grand(x float64) float64 {
+	w := 0.5*x - p.constant
+	for k, a := range p.weight {
+		w -= 0.25 * a * math.Log(x*x+p.shift[k]*p.shift[k])
+	}
+	return w
+}
+
+// The nodes of Zolotarev's problem lie between 0 and ∞ with sc²(K/2) = 1/k' in
+// the middle (closed form) and increase.
+func TestNodesOfZolotarevsProblem(t *testing.T) {
+	for _, dual := range []float64{1e-12, 1e-3, 0.5, 0.9999} {
+		for _, r := range []int{1, 2, 7, 60} {
+			node := nodes(dual, r)
+			if math.Abs(node[r]*dual-1) > 1e-13 {
+				t.Errorf("k' = %g, r = %d: middle %.16g, want %.16g", dual, r, node[r], 1/dual)
+			}
+			for l := 2; l < 2*r; l++ {
+				if node[l] <= node[l-1] {
+					t.Errorf("k' = %g, r = %d: node %d is %g after %g", dual, r, l, node[l], node[l-1])
+				}
+			}
+		}
+	}
+}
+
+// The poles of the Fermi function against the function itself, and ω against
+// −T ln(1 + e^{−x/T}).
+func TestFermiDiracPoles(t *testing.T) {
+	const M = 2
+	for _, temperature := range []float64{1e-8, 1e-5, 1e-3, 0.02, 0.3, 5, 1e6} {
+		var p poles
+		if !p.fermiDirac(temperature, M, poleTolerance) {
+			t.Errorf("T = %g: no poles", temperature)
+			continue
+		}
+		tol := max(1.5*poleTolerance, 0x1p-52*M/temperature) // see fermiDirac
+		least := min(1e-3*temperature, 1)
+		for j := range 2001 {
+			x := least * math.Pow(M/least, float64(j)/2000)
+			if e := math.Abs(p.odd(x)-math.Tanh(x/2/temperature)) / 2; e > tol {
+				t.Errorf("T = %g: error %g of f(%g), want at most %g", temperature, e, x, tol)
+				break
+			}
+			want := -temperature * math.Log1p(math.Exp(-x/temperature))
+			if e := math.Abs(p.grand(x) - want); e > tol*max(M, temperature) {
+				t.Errorf("T = %g: error %g of ω(%g)", temperature, e, x)
+				break
+			}
+		}
+	}
+}
+
+// The shortened Matsubara sum still is tanh(x/2)/x (closed form).
+func TestShortenedMatsubaraSum(t *testing.T) {
+	for _, ratio := range []float64{1e-6, 1, 1e3, 1e8} {
+		frequency, root := matsubara(ratio)
+		for _, part := range []float64{1e-3, 0.1, 0.5, 1} {
+			x := part * ratio
+			var sum float64
+			for k, w := range frequency {
+				sum += root[k] * root[k] / (x*x + w*w)
+			}
+			if want := math.Tanh(x/2) / x; math.Abs(sum-want) > 1e-13*want {
+				t.Errorf("x = %g of %g: %.16g, want %.16g", x, ratio, sum, want)
+			}
+		}
+	}
+}

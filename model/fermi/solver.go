@@ -41,7 +41,17 @@ type Solver struct {
 
 	dense  dense
 	poles  poleSolver
+	waves  waves
 	levels tridiagonal
+}
+
+// Forget makes the Solver as good as new but for its workspace: what it returns
+// next depends on nothing that it has solved before.
+func (s *Solver) Forget() {
+	s.poles.gap.guess = s.poles.gap.guess[:0]
+	s.poles.step = [2]poles{}
+	s.poles.warm.key = warmKey{}
+	s.poles.warm.mu, s.poles.warm.slope = 0, 0
 }
 
 // largestDense is the longest chain that is diagonalised in full: the time
@@ -73,6 +83,11 @@ func (s *Solver) Solve(ctx context.Context, h *Hamiltonian, occ Occupation, st *
 	}
 	st.Density = resize(st.Density, len(h.Site))
 	st.BondOrder = resize(st.BondOrder, len(h.Bond))
+	if s.Method == Fastest && h.alike() {
+		st.Method = "waves"
+		s.waves.solve(h, occ, st)
+		return nil
+	}
 	if s.choose(len(h.Site), occ.Temperature) == Poles {
 		st.Method = Poles.String()
 		err := s.poles.solve(ctx, h, occ, st, s.RoughEdges)

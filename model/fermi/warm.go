@@ -8,9 +8,8 @@ import (
 
 // warm is what is kept for electrons at T > 0.
 type warm struct {
-	poles       poles
-	temperature float64 // of the poles
-	trials      [2]trial
+	made   []madePoles // latest last
+	trials [2]trial
 
 	key   warmKey // what the following belong to
 	mu    float64 // the last chemical potential
@@ -86,13 +85,9 @@ func (p *poleSolver) firstSlope(excess float64, key warmKey, st *State) float64 
 
 // try stores what the electrons do at mu.
 func (p *poleSolver) try(ctx context.Context, h *Hamiltonian, mu, spin float64, key warmKey, t *trial) error {
-	f := &p.warm.poles
-	M := max(p.gap.hi-mu, mu-p.gap.lo)
-	if p.warm.temperature != key.temperature || f.outer < M || wasteful*f.outer > M {
-		p.warm.temperature = key.temperature
-		if !f.fermiDirac(key.temperature, roomy*M, poleTolerance) {
-			return fmt.Errorf("%w: temperature %g cannot be resolved in a band of width %g", errUnresolved, key.temperature, p.gap.hi-p.gap.lo)
-		}
+	f := p.warm.polesFor(key.temperature, max(p.gap.hi-mu, mu-p.gap.lo))
+	if f == nil {
+		return fmt.Errorf("%w: temperature %g cannot be resolved in a band of width %g", errUnresolved, key.temperature, p.gap.hi-p.gap.lo)
 	}
 	t.mu = mu
 	t.density, t.bond = resize(t.density, len(h.Site)), resize(t.bond, len(h.Bond))
@@ -109,9 +104,43 @@ func (p *poleSolver) try(ctx context.Context, h *Hamiltonian, mu, spin float64, 
 	return err
 }
 
-// roomy is the room left in the range of thermal poles, which take milliseconds
-// to make.
-const roomy = 1.1
+// madePoles are poles that have been made for a temperature and a range.
+type madePoles struct {
+	poles
+	temperature, reach float64
+}
+
+const (
+	// roomy is the ratio of neighbouring ranges for which thermal poles are made:
+	// ranges are rounded up to a power of it times T, so that the same poles serve
+	// similar chains and depend on nothing but T and the rounded range.
+	roomy = 1.1
+	// keptPoles is how many ranges and temperatures are kept: making poles takes
+	// milliseconds.
+	keptPoles = 4
+)
+
+// polesFor returns poles that are good for |ε − μ| ≤ M at the temperature, or
+// nil if there are none.
+func (w *warm) polesFor(temperature, M float64) *poles {
+	reach := temperature * math.Pow(roomy, math.Ceil(math.Log(max(M/temperature, 1))/math.Log(roomy)))
+	reach = max(reach, M)
+	for i := range w.made {
+		if m := &w.made[i]; m.temperature == temperature && m.reach == reach {
+			return &m.poles
+		}
+	}
+	if len(w.made) == keptPoles {
+		w.made = append(w.made[:0], w.made[1:]...)
+	}
+	var m madePoles
+	if !m.fermiDirac(temperature, reach, poleTolerance) {
+		return nil
+	}
+	m.temperature, m.reach = temperature, reach
+	w.made = append(w.made, m)
+	return &w.made[len(w.made)-1].poles
+}
 
 // blend stores the state at the chemical potential where the excess, taken as
 // linear between two trials (or one twice), vanishes.

@@ -16,79 +16,85 @@ const (
 	push = 2e-2
 )
 
-// testCurvature finds the lowest second derivative of the free energy in the
-// space of the 2kF patterns of all branches (two phases each), by central
+// testCurvature finds the lowest second derivative of the free energy at an end
+// in the space of the 2kF patterns of all branches (two phases each), by central
 // differences of the exact gradient. Units: the bare spring is 1.
-func (one *path) testCurvature(ctx context.Context) error {
-	one.curvature = 1
-	basis := one.waves()
+func (w *walker) testCurvature(ctx context.Context, e *end) error {
+	e.curvature, e.downhill = 1, nil
+	basis := w.waves()
 	k := len(basis)
 	if k == 0 {
 		return nil
 	}
-	at := append([]float64(nil), one.x...)
 	h := mat.NewSymDense(k, nil)
-	x, up := make([]float64, len(at)), make([]float64, len(at))
+	up := make([]float64, k)
 	for j, d := range basis {
-		eps := one.reach(d, probe)
-		copy(x, at)
-		addScaled(x, eps, d)
-		if err := one.evaluate(ctx, x); err != nil {
-			return err
+		eps := w.reach(d, probe)
+		for sign := 1.0; sign >= -1; sign -= 2 {
+			copy(w.x, e.x)
+			addScaled(w.x, sign*eps, d)
+			if err := w.evaluate(ctx); err != nil {
+				return err
+			}
+			for i := 0; i <= j; i++ {
+				slope := dot(basis[i], w.g)
+				if sign > 0 {
+					up[i] = slope
+				} else {
+					h.SetSym(i, j, (up[i]-slope)/(2*eps))
+				}
+			}
 		}
-		copy(up, one.g)
-		addScaled(x, -2*eps, d)
-		if err := one.evaluate(ctx, x); err != nil {
-			return err
-		}
-		for i := 0; i <= j; i++ {
-			h.SetSym(i, j, (dot(basis[i], up)-dot(basis[i], one.g))/(2*eps))
-		}
-	}
-	if err := one.evaluate(ctx, at); err != nil {
-		return err
 	}
 	var eig mat.EigenSym
 	if !eig.Factorize(h, true) {
-		one.curvature = math.NaN()
+		e.curvature = math.NaN()
 		return nil
 	}
-	one.curvature = eig.Values(nil)[0]
+	e.curvature = eig.Values(nil)[0]
 	var vectors mat.Dense
 	eig.VectorsTo(&vectors)
-	one.downhill = make([]float64, len(at))
+	e.downhill = make([]float64, len(e.x))
 	for i, d := range basis {
-		addScaled(one.downhill, vectors.At(i, 0), d)
+		addScaled(e.downhill, vectors.At(i, 0), d)
 	}
 	return nil
 }
 
-// offSaddle returns a new path that stands a little way down the direction that
-// testCurvature found.
-func (one *path) offSaddle(ctx context.Context) (*path, error) {
-	down := newPath(one.problem, one.name+", off a saddle")
-	x := append([]float64(nil), one.x...)
-	addScaled(x, one.reach(one.downhill, push), one.downhill)
-	return down, down.evaluate(ctx, x)
+// offSaddle walks down the direction that testCurvature found.
+func (w *walker) offSaddle(ctx context.Context, e *end, set Settings) (*end, error) {
+	x := append([]float64(nil), e.x...)
+	addScaled(x, w.reach(e.downhill, push), e.downhill)
+	if err := w.stand(ctx, x); err != nil {
+		return nil, err
+	}
+	n, err := w.minimise(ctx, set.Tolerance, set.MaxIterations, nil)
+	return w.at(e.name+", off a saddle", n), err
 }
 
 // reach returns the multiple of d that changes its largest matrix element by
 // part of the scale.
-func (one *path) reach(d []float64, part float64) float64 {
-	most := max(one.bondCoupling*maxAbs(d[:one.bonds]), one.siteCoupling*maxAbs(d[one.bonds:]))
-	return part * one.scale() / most
+func (p *problem) reach(d []float64, part float64) float64 {
+	most := max(p.bondCoupling*maxAbs(d[:p.bonds]), p.siteCoupling*maxAbs(d[p.bonds:]))
+	if most == 0 {
+		return 1
+	}
+	return part * p.scale() / most
 }
 
 // waves returns an orthonormal basis of the 2kF patterns.
-func (one *path) waves() [][]float64 {
-	q := 2 * math.Pi * one.occupation.Electrons / float64(one.occupation.Spin*one.sites)
+func (p *problem) waves() [][]float64 {
+	q := 2 * math.Pi * p.occupation.Electrons / float64(p.occupation.Spin*p.sites)
 	var basis [][]float64
 	add := func(from, n int, phase float64) {
-		d := make([]float64, one.size())
+		if n == 0 {
+			return
+		}
+		d := make([]float64, p.size())
 		for i := range n {
 			d[from+i] = math.Cos(q*float64(i) + phase)
 		}
-		one.project(d)
+		p.project(d)
 		before := math.Sqrt(dot(d, d))
 		for _, b := range basis {
 			addScaled(d, -dot(b, d), b)
@@ -99,8 +105,8 @@ func (one *path) waves() [][]float64 {
 		}
 	}
 	for _, phase := range []float64{0, math.Pi / 2} {
-		add(0, one.bonds, phase)
-		add(one.bonds, one.modes, phase)
+		add(0, p.bonds, phase)
+		add(p.bonds, p.modes, phase)
 	}
 	return basis
 }

@@ -5,8 +5,8 @@ import (
 	"errors"
 	"fmt"
 	"runtime/debug"
-	"slices"
 	"sync"
+	"sync/atomic"
 )
 
 // scouting is how many iterations every start is given. A good one has
@@ -14,98 +14,103 @@ import (
 // stands below all that have.
 const scouting = 60
 
-// race relaxes the starts, Jobs at a time, and returns their ends in the order
-// of the starts. What each does depends on nothing that finishes in between, so
-// the outcome is the same to the last bit for any number of cores. A start for
-// which the electrons cannot be solved is left out; if that is all of them, its
-// error is returned.
-func (p *problem) race(ctx context.Context, starts []Seed, set Settings) ([]*path, error) {
-	paths := make([]*path, len(starts))
+// race relaxes the starts side by side, one walker each, and returns their ends
+// in the order of the starts. What each does depends on nothing that finishes in
+// between, so the outcome is the same to the last bit for any number of
+// walkers. A start for which the electrons cannot be solved is left out; if that
+// is all of them, their errors are returned.
+func race(ctx context.Context, walkers []*walker, starts []Seed, set Settings) ([]*end, error) {
+	ends := make([]*end, len(starts))
 	finished := 0
 	var lock sync.Mutex
-	report := func(one *path) {
-		if set.Progress == nil {
-			return
+	walk := func(w *walker, i int, iterations int) error {
+		name, before := starts[i].Name, 0
+		x := w.vector(starts[i])
+		if ends[i] != nil { // go on
+			x, before = ends[i].x, ends[i].iterations
 		}
-		lock.Lock()
-		defer lock.Unlock()
-		set.Progress(Progress{one.name, finished, len(starts), one.iterations, one.residual, set.Tolerance})
+		if err := w.stand(ctx, x); err != nil {
+			return err
+		}
+		n, err := w.minimise(ctx, set.Tolerance, iterations, func(iteration int, residual float64) {
+			if set.Progress != nil {
+				lock.Lock()
+				defer lock.Unlock()
+				set.Progress(Progress{name, finished, len(starts), before + iteration, residual, set.Tolerance})
+			}
+		})
+		if err != nil {
+			return err
+		}
+		ends[i] = w.at(name, before+n)
+		return nil
 	}
-	errs := sideBySide(len(starts), set.Jobs, func(i int) error {
-		paths[i] = newPath(p, starts[i].Name)
-		err := paths[i].evaluate(ctx, p.vector(starts[i]))
-		if err == nil {
-			err = paths[i].minimise(ctx, set.Tolerance, min(scouting, set.MaxIterations), report)
-		}
+
+	errs := sideBySide(len(walkers), len(starts), func(worker, i int) error {
+		err := walk(walkers[worker], i, min(scouting, set.MaxIterations))
 		lock.Lock()
 		finished++
 		lock.Unlock()
 		return err
 	})
-
-	good := solved(paths, errs)
-	if ctx.Err() != nil || len(good) == 0 && len(starts) > 0 {
-		return nil, errors.Join(errs...)
+	if ctx.Err() != nil {
+		return nil, context.Cause(ctx)
 	}
-	hopeful := good[:0:0]
-	for _, one := range good {
-		if one.residual > set.Tolerance && !aboveConverged(one, good, set.Tolerance) {
-			hopeful = append(hopeful, one)
+	var hopeful []int
+	for i, e := range ends {
+		if e != nil && e.residual > set.Tolerance && !aboveConverged(e, ends, set.Tolerance) {
+			hopeful = append(hopeful, i)
 		}
 	}
-	errs = sideBySide(len(hopeful), set.Jobs, func(i int) error {
-		return hopeful[i].minimise(ctx, set.Tolerance, set.MaxIterations, report)
+	sideBySide(len(walkers), len(hopeful), func(worker, i int) error {
+		return walk(walkers[worker], hopeful[i], set.MaxIterations-scouting) // on error its end so far stands
 	})
-	if ctx.Err() != nil || len(good) == len(hopeful) && len(solved(hopeful, errs)) == 0 {
-		return nil, errors.Join(errs...)
+	if ctx.Err() != nil {
+		return nil, context.Cause(ctx)
 	}
-	for i, err := range errs {
-		if err != nil {
-			good = slices.DeleteFunc(good, func(one *path) bool { return one == hopeful[i] })
+	var good []*end
+	for _, e := range ends {
+		if e != nil {
+			good = append(good, e)
 		}
+	}
+	if len(good) == 0 && len(starts) > 0 {
+		return nil, errors.Join(errs...)
 	}
 	return good, nil
 }
 
-// solved returns the paths without an error.
-func solved(paths []*path, errs []error) (good []*path) {
-	for i, one := range paths {
-		if errs[i] == nil {
-			good = append(good, one)
-		}
-	}
-	return good
-}
-
-// aboveConverged reports whether some path has converged below this one.
-func aboveConverged(one *path, all []*path, tolerance float64) bool {
+// aboveConverged reports whether some end has converged below this one.
+func aboveConverged(one *end, all []*end, tolerance float64) bool {
 	for _, other := range all {
-		if other.residual <= tolerance && other.free < one.free {
+		if other != nil && other.residual <= tolerance && other.free < one.free {
 			return true
 		}
 	}
 	return false
 }
 
-// sideBySide calls do(0) … do(n−1), so many at a time, and returns their errors.
-// A panic becomes an error: in here it would leave the user's terminal raw.
-func sideBySide(n, atATime int, do func(int) error) []error {
+// sideBySide calls do(worker, 0) … do(worker, n−1) on so many workers and
+// returns the errors. A panic becomes an error: in a goroutine it would leave the
+// user's terminal raw.
+func sideBySide(workers, n int, do func(worker, i int) error) []error {
 	errs := make([]error, n)
-	seats := make(chan struct{}, max(1, atATime))
-	var wait sync.WaitGroup
-	for i := range n {
-		seats <- struct{}{}
-		wait.Add(1)
-		go func() {
-			defer wait.Done()
-			defer func() { <-seats }()
-			defer func() {
-				if r := recover(); r != nil {
-					errs[i] = fmt.Errorf("relax: %v\n%s", r, debug.Stack())
-				}
-			}()
-			errs[i] = do(i)
+	safely := func(worker, i int) {
+		defer func() {
+			if r := recover(); r != nil {
+				errs[i] = fmt.Errorf("relax: %v\n%s", r, debug.Stack())
+			}
 		}()
+		errs[i] = do(worker, i)
+	}
+	var next atomic.Int64
+	var wait sync.WaitGroup
+	for worker := range min(workers, n) {
+		wait.Go(func() {
+			for i := int(next.Add(1)) - 1; i < n; i = int(next.Add(1)) - 1 {
+				safely(worker, i)
+			}
+		})
 	}
 	wait.Wait()
 	return errs

@@ -63,7 +63,7 @@ type Settings struct {
 	MaxIterations int            // per start; 0 means 1000
 	Starts        []Seed         // nil means Seeds(c)
 	Previous      *Lattice       // tried as one more start when its shape fits
-	Jobs          int            // starts relaxed side by side; 0 or 1 means one after the other
+	Jobs          int            // starts relaxed side by side; 0 means one after the other
 	Progress      func(Progress) // if not nil, called now and then, never concurrently
 }
 
@@ -101,16 +101,14 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 		set.MaxIterations = defaultMaxIterations
 	}
 	p := newProblem(c)
-	uniform := newPath(p, "undistorted")
-	if err := uniform.evaluate(ctx, make([]float64, p.size())); err != nil {
+	walkers := []*walker{newWalker(p)}
+	w := walkers[0]
+	if err := w.stand(ctx, make([]float64, p.size())); err != nil {
 		return nil, err
 	}
-	undistorted := uniform.free
+	uniform := w.at("undistorted", 0)
 	if p.size() == 0 {
-		if err := uniform.finish(ctx); err != nil {
-			return nil, err
-		}
-		return uniform.lattice(undistorted, set.Tolerance), nil
+		return w.lattice(ctx, uniform, uniform, set.Tolerance)
 	}
 
 	starts := set.Starts
@@ -120,62 +118,55 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 	if prev := set.Previous; prev != nil && p.fits(prev) {
 		starts = append([]Seed{{Name: "previous", Stretch: prev.Stretch, SiteMode: prev.SiteMode}}, starts...)
 	}
-	paths, err := p.race(ctx, starts, set)
+	for len(walkers) < min(set.Jobs, len(starts)) {
+		walkers = append(walkers, newWalker(p))
+	}
+	ends, err := race(ctx, walkers, starts, set)
 	if err != nil {
 		return nil, err
 	}
 
-	best := lowest(append(paths, uniform), p)
-	if err := best.testCurvature(ctx); err != nil {
+	best := p.lowest(append(ends, uniform))
+	if err := w.testCurvature(ctx, best); err != nil {
 		return nil, err
 	}
 	for try := 0; best.curvature < saddleCurvature && try < 2; try++ {
-		down, err := best.offSaddle(ctx)
-		if err == nil {
-			err = down.minimise(ctx, set.Tolerance, set.MaxIterations, nil)
-		}
+		down, err := w.offSaddle(ctx, best, set)
 		if err != nil {
 			return nil, err
 		}
-		paths = append(paths, down)
-		if best = lowest([]*path{down, best}, p); best != down {
+		ends = append(ends, down)
+		if best = p.lowest([]*end{down, best}); best != down {
 			break
 		}
-		if err := best.testCurvature(ctx); err != nil {
+		if err := w.testCurvature(ctx, best); err != nil {
 			return nil, err
 		}
 	}
-
-	if err := best.finish(ctx); err != nil {
+	l, err := w.lattice(ctx, best, uniform, set.Tolerance)
+	if err != nil {
 		return nil, err
 	}
-	l := best.lattice(undistorted, set.Tolerance)
-	for _, one := range paths {
-		l.Tried = append(l.Tried, Attempt{one.name, one.free, one.residual, one.residual <= set.Tolerance, one.iterations})
+	for _, e := range ends {
+		l.Tried = append(l.Tried, Attempt{e.name, e.free, e.residual, e.residual <= set.Tolerance, e.iterations})
 	}
 	return l, nil
 }
 
 // lowest picks the end of lowest free energy. Ends that are equal to rounding
 // are settled in favour of the undistorted chain, then of the earlier start.
-func lowest(paths []*path, p *problem) *path {
+func (p *problem) lowest(ends []*end) *end {
 	tie := tieEnergy * p.scale() * float64(p.sites)
-	best := paths[0]
-	for _, one := range paths[1:] {
-		switch gain := best.free - one.free; {
+	best := ends[0]
+	for _, e := range ends[1:] {
+		switch gain := best.free - e.free; {
 		case gain > tie:
-			best = one
-		case gain > -tie && one.name == "undistorted" && !(best.residual < one.residual/2):
-			best = one
+			best = e
+		case gain > -tie && e.name == "undistorted" && !(best.residual < e.residual/2):
+			best = e
 		}
 	}
 	return best
-}
-
-// finish solves for the electrons once more, gap edges and all.
-func (one *path) finish(ctx context.Context) error {
-	one.solver.RoughEdges = false
-	return one.evaluate(ctx, append([]float64(nil), one.x...))
 }
 
 // fits reports whether a lattice has the shape of this problem.
@@ -183,29 +174,30 @@ func (p *problem) fits(l *Lattice) bool {
 	return len(l.Stretch) == p.bonds && len(l.SiteMode) == p.modes
 }
 
-// lattice freezes the end of a path.
-func (one *path) lattice(undistorted, tolerance float64) *Lattice {
-	p := one.problem
+// lattice solves for the electrons at an end once more, gap edges and all, and
+// hands out what it finds; the walker is of no use after that.
+func (w *walker) lattice(ctx context.Context, e, undistorted *end, tolerance float64) (*Lattice, error) {
+	w.solver.RoughEdges = false
+	if err := w.stand(ctx, e.x); err != nil {
+		return nil, err
+	}
 	l := &Lattice{
-		Electrons:     one.electrons,
-		FreeEnergy:    one.free,
-		LatticeEnergy: one.springs,
-		Undistorted:   undistorted,
-		Residual:      one.residual,
+		Electrons:     w.electrons,
+		FreeEnergy:    w.free,
+		LatticeEnergy: w.springs,
+		Undistorted:   undistorted.free,
+		Residual:      w.residual,
 		Tolerance:     tolerance,
-		Converged:     one.residual <= tolerance,
-		Iterations:    one.iterations,
-		Curvature:     one.curvature,
-		Start:         one.name,
+		Converged:     w.residual <= tolerance,
+		Iterations:    e.iterations,
+		Curvature:     e.curvature,
+		Start:         e.name,
 	}
-	if p.size() == 0 {
-		l.Curvature = 1
-	}
-	l.Stretch, l.SiteMode = p.patterns(one.x)
+	l.Stretch, l.SiteMode = w.patterns(e.x)
 	if l.Stretch != nil {
-		l.Displacement = displacement(l.Stretch, p.sites)
+		l.Displacement = displacement(l.Stretch, w.sites)
 	}
-	return l
+	return l, nil
 }
 
 // displacement sums the stretches up to positions of zero mean.

@@ -449,14 +449,14 @@ func TestForces(t *testing.T) {
 			}
 		}
 		p := newProblem(c)
-		at := newPath(p, "probe")
+		at := newWalker(p)
 		x := make([]float64, p.size())
 		for i := range x {
 			x[i] = rapid.Float64Range(-0.3, 0.3).Draw(t, "x")
 		}
 		p.project(x)
 		ctx := context.Background()
-		if err := at.evaluate(ctx, x); err != nil {
+		if err := at.stand(ctx, x); err != nil {
 			t.Fatal(err)
 		}
 		if c.Temperature == 0 && at.electrons.Lowest-at.electrons.Highest < 1e-2 {
@@ -469,7 +469,7 @@ func TestForces(t *testing.T) {
 			y := append([]float64(nil), x...)
 			y[i] += step
 			p.project(y)
-			if err := at.evaluate(ctx, y); err != nil {
+			if err := at.stand(ctx, y); err != nil {
 				t.Fatal(err)
 			}
 			return at.free

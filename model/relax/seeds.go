@@ -24,7 +24,7 @@ const (
 	dentWidth = 1.0
 	// longestRandom is the longest chain that is also started at random: in longer
 	// ones kinks freeze in and take hundreds of steps to end in a higher state.
-	longestRandom = 512
+	longestRandom = 256
 	// largestPeriod of the commensurate patterns that are tried beside 2kF.
 	largestPeriod = 4
 )
