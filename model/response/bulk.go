@@ -123,12 +123,18 @@ func (r *Bulk) contourSum(q float64) Static {
 	if r.band.Hopping == 0 && q > math.Pi/2 {
 		// Two separate chains, ε(k+π) = ε(k): χ0(q) = χ0(π−q), cos² ↔ sin².
 		s := r.contourSum(math.Pi - q)
+		if math.IsInf(s.Site, 1) {
+			return Static{Site: s.Site, Bond: s.Site}
+		}
 		return Static{Site: s.Site, Bond: 4*s.Site - s.Bond}
 	}
 	var sum Static
 	v := newWavevector(r.band.Hopping, r.band.NextHopping, q)
 	for i := range r.branches {
 		sum.add(1, r.branches[i].sum(&v))
+	}
+	if r.band.Hopping == 0 {
+		sum.Mixed = 0 // and the vertex 2cos changes its sign
 	}
 	scale := float64(r.band.Spin) / math.Pi
 	return Static{Site: scale * sum.Site, Bond: scale * sum.Bond, Mixed: scale * sum.Mixed}
