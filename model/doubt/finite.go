@@ -110,17 +110,23 @@ func largest(x []float64) float64 {
 	return most
 }
 
+// shortest is how many coherence lengths v_F/Δ a chain must have for its gap to be
+// that of a long one. It is stricter than a level spacing below Δ, which a ring
+// has from 2π lengths on.
+const shortest = 8
+
 func levelSpacing(e Evidence) (Doubt, bool) {
 	if e.Lattice == nil || e.Velocity == 0 || math.IsNaN(e.Gap) || e.Lattice.Electrons.OpenShell || !e.distorted() {
 		return Doubt{}, false
 	}
-	half := e.Gap / 2
+	lengths := float64(e.Chain.Sites) * e.Gap / 2 / e.Velocity // N/ξ, ξ = v_F/Δ
+	limit := e.spacing() * lengths / shortest
 	return Doubt{
 		Name:    "level_spacing",
-		Verdict: verdict(e.spacing() > half),
+		Verdict: verdict(e.spacing() > limit),
 		Value:   e.spacing(),
-		Limit:   half,
-		Why:     "level spacing of the undistorted chain at E_F against half the gap: above it the chain is too short for its gap",
+		Limit:   limit,
+		Why:     "level spacing of the undistorted chain at E_F against that of a chain of 8 coherence lengths v_F/Δ: above it the chain is too short for its gap",
 		Source:  "common practice",
 	}, true
 }

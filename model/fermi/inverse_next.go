@@ -1,144 +1,221 @@
 package fermi
 
-import (
-	"math"
-	"math/cmplx"
-)
+import "math/cmplx"
 
-// nextInverse is the workspace for chains with second-neighbour hopping, one
-// pole at a time. A = z − H is a band matrix with two off-diagonals; the last
-// two sites P, Q of a ring are a border that both ends of the band couple to.
-type nextInverse struct {
-	site []nextSite
-}
-
+// A nextSite is what elimination leaves of a site of a chain with
+// second-neighbour hopping, for each pole of a sweep.
 type nextSite struct {
-	inverse   complex128 // 1/d_i
-	near, far complex128 // L_{i+1,i}, L_{i+2,i}
-	p, q      complex128 // L_{P,i}, L_{Q,i}
+	inverse   [width]complex128 // 1/d_i
+	near, far [width]complex128 // L_{i+1,i}, L_{i+2,i}
+	p, q      [width]complex128 // L_{P,i}, L_{Q,i}; not set between the two ends of a ring
 }
 
-// add adds a Re G_ii to density and 2a Re G_{i,i+1} to bond and returns
-// ln |det A|, Σ_i Re G_{i,i+2} and an estimate of the error of G, where G = A⁻¹
-// and
+// A nextBorder are the last two sites P, Q of a ring, a border that both ends
+// of the band couple to.
+type nextBorder struct {
+	pp, pq, qq [width]complex128 // its block of A, later of G
+	row        [width]complex128 // A G in its last row, see ring
+	left       int               // from here to the last two sites of the band nothing couples to it
+}
+
+// secondNeighbours treats a chain with second-neighbour hopping (a ring has at
+// least five sites). A = z − H is a band matrix with two off-diagonals, and
 //
 //	A = L D Lᵀ,   L_{j,i} = A'_{j,i}/d_i,   A'_{j,k} = A_{j,k} − Σ_{i<k} L_{j,i} d_i L_{k,i} (j ≥ k),
 //	G_{i,k} = −Σ_{j>i} L_{j,i} G_{j,k} (k > i),   G_ii = 1/d_i − Σ_{j>i} L_{j,i} G_{j,i}
 //
 // (K. Takahashi, J. Fagan, M. Chin, 8th PICA Conference, 1973; from memory).
-// A ring has at least five sites.
-func (x *nextInverse) add(h *Hamiltonian, z complex128, a float64, density, bond []float64) (log, order, miss float64) {
+func (w *sweep) secondNeighbours(h *Hamiltonian, density, bond []float64) {
+	w.next = resize(w.next, len(h.Site))
+	var b nextBorder
+	det := newProduct()
+	w.forwardNext(h, &b, &det)
+	if h.Ring {
+		n := len(h.Site) - 2
+		var x, y, z float64
+		for l, a := range w.weight {
+			d := b.pp[l]*b.qq[l] - b.pq[l]*b.pq[l]
+			det.mantissa[l] *= square(d)
+			d = reciprocal(d)
+			b.pp[l], b.pq[l], b.qq[l] = b.qq[l]*d, -b.pq[l]*d, b.pp[l]*d
+			b.row[l] = w.shifted(l, h.Site[n+1])*b.qq[l] + scaled(h.Bond[n], b.pq[l]) - 1
+			x += a * real(b.pp[l])
+			y += a * real(b.qq[l])
+			z += a * real(b.pq[l])
+		}
+		density[n] += x
+		density[n+1] += y
+		bond[n] += 2 * z
+		det.settle()
+	}
+	det.addTo(&w.log, 0.5)
+	w.backwardNext(h, &b, density, bond)
+}
+
+// shifted returns z − energy.
+func (w *sweep) shifted(l int, energy float64) complex128 {
+	return complex(w.mu-energy, w.shift[l])
+}
+
+// forwardNext eliminates the band from the left.
+func (w *sweep) forwardNext(h *Hamiltonian, b *nextBorder, det *product) {
 	n := len(h.Site)
-	x.site = resize(x.site, n)
-	t := complex(h.Next, 0)
-	var pp, pq, qq complex128 // the block of the border
-	var row complex128        // A G in its last row, see ring
-	var p, q [3]complex128    // coupling of sites i, i+1, i+2 to it
+	t := h.Next
+	var p0, p1, q0, q1 [width]complex128 // coupling of sites i, i+1 to P, Q
 	if h.Ring {
 		n -= 2
-		pp, pq, qq = z-complex(h.Site[n], 0), complex(h.Bond[n], 0), z-complex(h.Site[n+1], 0)
-		p[0] = t
-		q[0], q[1] = complex(h.Bond[n+1], 0), t
-	}
-	det := 1.0
-	exponent := 0
-	gather := func(v float64) {
-		det *= v
-		f, e := math.Frexp(det)
-		det = f
-		exponent += e
-	}
-	var d1, d2, c1 complex128 // what A'_{i,i}, A'_{i+1,i+1} and A'_{i,i+1} have lost
-	for i := range n {
-		s := &x.site[i]
-		if h.Ring {
-			switch i {
-			case n - 1:
-				p[0] += complex(h.Bond[i], 0)
-				q[0] += t
-			case n - 2:
-				p[0] += t
-			}
+		for l := range width {
+			b.pp[l], b.pq[l], b.qq[l] = w.shifted(l, h.Site[n]), complex(h.Bond[n], 0), w.shifted(l, h.Site[n+1])
+			p0[l], q0[l], q1[l] = complex(t, 0), complex(h.Bond[n+1], 0), complex(t, 0)
 		}
-		d := z - complex(h.Site[i], 0) - d1
-		var c, f complex128
+	}
+	b.left = n
+	coupled := h.Ring
+	var d1, d2, c1 [width]complex128 // what A'_{i,i}, A'_{i+1,i+1} and A'_{i,i+1} have lost
+	for i := range n {
+		s := &w.next[i]
+		var c, f float64
 		if i+1 < n {
-			c = complex(h.Bond[i], 0) - c1
+			c = h.Bond[i]
 		}
 		if i+2 < n {
 			f = t
 		}
-		s.inverse = reciprocal(d)
-		gather(real(d)*real(d) + imag(d)*imag(d))
-		s.near, s.far = c*s.inverse, f*s.inverse
-		d1, d2, c1 = d2+s.near*c, s.far*f, s.near*f
-		if h.Ring {
-			s.p, s.q = p[0]*s.inverse, q[0]*s.inverse
-			pp -= s.p * p[0]
-			pq -= s.p * q[0]
-			qq -= s.q * q[0]
-			p = [3]complex128{p[1] - s.near*p[0], p[2] - s.far*p[0], 0}
-			q = [3]complex128{q[1] - s.near*q[0], q[2] - s.far*q[0], 0}
+		for l := range width {
+			d := w.shifted(l, h.Site[i]) - d1[l]
+			det.mantissa[l] *= square(d)
+			e := reciprocal(d)
+			v := complex(c, 0) - c1[l]
+			near, far := v*e, scaled(f, e)
+			d1[l], d2[l], c1[l] = d2[l]+near*v, scaled(f, far), scaled(f, near)
+			s.inverse[l], s.near[l], s.far[l] = e, near, far
 		}
-	}
-
-	if h.Ring {
-		d := pp*qq - pq*pq
-		gather(real(d)*real(d) + imag(d)*imag(d))
-		d = reciprocal(d)
-		pp, pq, qq = qq*d, -pq*d, pp*d // now G
-		density[n] += a * real(pp)
-		density[n+1] += a * real(qq)
-		bond[n] += 2 * a * real(pq)
-		row = (z-complex(h.Site[n+1], 0))*qq + complex(h.Bond[n], 0)*pq
-	}
-	log = 0.5 * (math.Log(det) + math.Ln2*float64(exponent))
-
-	var g11, g12, g22 complex128  // G of sites i+1, i+2
-	var p1, p2, q1, q2 complex128 // and with P, Q
-	for i := n - 1; i >= 0; i-- {
-		s := &x.site[i]
-		g1 := -(s.near*g11 + s.far*g12)
-		g2 := -(s.near*g12 + s.far*g22)
-		g := s.inverse
-		if h.Ring {
-			g1 -= s.p*p1 + s.q*q1
-			g2 -= s.p*p2 + s.q*q2
-			p0 := -(s.near*p1 + s.far*p2 + s.p*pp + s.q*pq)
-			q0 := -(s.near*q1 + s.far*q2 + s.p*pq + s.q*qq)
-			g -= s.p*p0 + s.q*q0
-			p1, p2, q1, q2 = p0, p1, q0, q1
-			if i == n-1 {
-				row += t * q0
+		if i&w.mask == 0 {
+			det.settle()
+		}
+		if h.Ring && i >= n-2 {
+			coupled = true
+			for l := range width {
+				if i == n-1 {
+					p0[l] += complex(h.Bond[i], 0)
+					q0[l] += complex(t, 0)
+				} else {
+					p0[l] += complex(t, 0)
+				}
 			}
 		}
-		g -= s.near*g1 + s.far*g2
-		density[i] += a * real(g)
-		switch {
-		case i+2 < n:
-			bond[i] += 2 * a * real(g1)
-			order += real(g2)
-		case i+2 == n:
-			bond[i] += 2 * a * real(g1)
-			order += real(p1) // zero on an open chain, like q1
-		case h.Ring:
-			bond[i] += 2 * a * real(p1)
-			order += real(q1)
+		if !coupled {
+			continue
 		}
-		g11, g12, g22 = g, g1, g11
+		var all float64
+		for l := range width {
+			p, q := p0[l]*s.inverse[l], q0[l]*s.inverse[l]
+			b.pp[l] -= p * p0[l]
+			b.pq[l] -= p * q0[l]
+			b.qq[l] -= q * q0[l]
+			p0[l], p1[l] = p1[l]-s.near[l]*p0[l], -s.far[l]*p0[l]
+			q0[l], q1[l] = q1[l]-s.near[l]*q0[l], -s.far[l]*q0[l]
+			s.p[l], s.q[l] = p, q
+			all += square(p) + square(q) + square(p1[l]*s.inverse[l]) + square(q1[l]*s.inverse[l])
+		}
+		if i%8 == 0 && i < n-10 && all < w.faded {
+			coupled, b.left = false, i+1
+			p0, p1 = [width]complex128{}, [width]complex128{}
+			q0, q1 = p0, p1
+		}
 	}
+	det.settle()
+}
+
+// backwardNext substitutes from the right.
+func (w *sweep) backwardNext(h *Hamiltonian, b *nextBorder, density, bond []float64) {
+	n := len(h.Site)
 	if h.Ring {
-		bond[n+1] += 2 * a * real(q1)
-		order += real(p1) + real(q2)
-		row += complex(h.Bond[n+1], 0)*q1 + t*q2 - 1
-		miss = cmplx.Abs(row) * cmplx.Abs(qq)
+		n -= 2
 	}
-	return log, order, miss
+	var g11, g12, g22 [width]complex128  // G of sites i+1, i+2
+	var p1, p2, q1, q2 [width]complex128 // and with P, Q
+	carried := h.Ring
+	for i := n - 1; i >= 0; i-- {
+		s := &w.next[i]
+		ends := h.Ring && (i < b.left || i >= n-2)
+		var x, y, z float64
+		for l, a := range w.weight {
+			near, far := s.near[l], s.far[l]
+			g1 := -(near*g11[l] + far*g12[l])
+			g2 := -(near*g12[l] + far*g22[l])
+			g := s.inverse[l]
+			if ends {
+				sp, sq := s.p[l], s.q[l]
+				g1 -= sp*p1[l] + sq*q1[l]
+				g2 -= sp*p2[l] + sq*q2[l]
+				p := -(near*p1[l] + far*p2[l] + sp*b.pp[l] + sq*b.pq[l])
+				q := -(near*q1[l] + far*q2[l] + sp*b.pq[l] + sq*b.qq[l])
+				g -= sp*p + sq*q
+				p1[l], p2[l], q1[l], q2[l] = p, p1[l], q, q1[l]
+			}
+			g -= near*g1 + far*g2
+			g11[l], g12[l], g22[l] = g, g1, g11[l]
+			x += a * real(g)
+			y += a * real(g1)
+			z += a * real(g2)
+		}
+		if carried && !ends {
+			var all float64
+			for l := range width {
+				p := -(s.near[l]*p1[l] + s.far[l]*p2[l])
+				q := -(s.near[l]*q1[l] + s.far[l]*q2[l])
+				p1[l], p2[l], q1[l], q2[l] = p, p1[l], q, q1[l]
+				all += square(p) + square(q) + square(p2[l]) + square(q2[l])
+			}
+			if i%8 == 0 && all < w.faded {
+				carried = false
+				p1, p2 = [width]complex128{}, [width]complex128{}
+				q1, q2 = p1, p2
+			}
+		}
+		density[i] += x
+		if i+1 < n {
+			bond[i] += 2 * y
+		}
+		if i+2 < n {
+			w.order += 2 * z
+			continue
+		}
+		if !h.Ring {
+			continue
+		}
+		for l, a := range w.weight {
+			if i+2 == n {
+				w.order += 2 * a * real(p1[l])
+				continue
+			}
+			bond[i] += 2 * a * real(p1[l])
+			w.order += 2 * a * real(q1[l])
+			b.row[l] += scaled(h.Next, q1[l])
+		}
+	}
+	if !h.Ring {
+		return
+	}
+	var x float64
+	for l, a := range w.weight {
+		x += a * real(q1[l])
+		w.order += 2 * a * (real(p1[l]) + real(q2[l]))
+		b.row[l] += scaled(h.Bond[n+1], q1[l]) + scaled(h.Next, q2[l])
+		w.miss(l, cmplx.Abs(b.row[l])*cmplx.Abs(b.qq[l]))
+	}
+	bond[n+1] += 2 * x
 }
 
 // reciprocal returns 1/z for a z that is far from overflow.
 func reciprocal(z complex128) complex128 {
-	x, y := real(z), imag(z)
-	n := 1 / (x*x + y*y)
-	return complex(x*n, -y*n)
+	n := 1 / square(z)
+	return complex(real(z)*n, -imag(z)*n)
 }
+
+// scaled returns x z.
+func scaled(x float64, z complex128) complex128 { return complex(x*real(z), x*imag(z)) }
+
+// square returns |z|².
+func square(z complex128) float64 { return real(z)*real(z) + imag(z)*imag(z) }

@@ -37,7 +37,8 @@ func (r *root) next() float64 {
 		p, q, s := r.y[0], r.y[1], r.y[2]
 		x = r.x[0]*q*s/((p-q)*(p-s)) + r.x[1]*p*s/((q-p)*(q-s)) + r.x[2]*p*q/((s-p)*(s-q))
 	}
-	if !(x > r.lo && x < r.hi) || r.known >= many && r.known%2 == 0 {
+	idle := r.known > 1 && r.y[0]/r.y[1] > 0.8 // a slope much too steep
+	if !(x > r.lo && x < r.hi) || idle || r.known >= many && r.known%2 == 0 {
 		return r.lo + (r.hi-r.lo)/2
 	}
 	return x

@@ -30,7 +30,7 @@ type sweep struct {
 
 	inverse []cell // 1/pivot of each site
 	border  []cell // coupling to the border of a ring, over the pivot
-	next    nextInverse
+	next    []nextSite
 	wide    wideInverse
 	saved   []float64 // density and bond before a sweep that may have to be repeated
 }
@@ -93,14 +93,7 @@ func (w *sweep) run(h *Hamiltonian, density, bond []float64) {
 	w.inverse = resize(w.inverse, len(h.Site))
 	switch {
 	case h.Next != 0:
-		for l, a := range w.weight {
-			if a != 0 {
-				log, order, miss := w.next.add(h, complex(w.mu, w.shift[l]), a, density, bond)
-				w.log[l] = log
-				w.order += 2 * a * order
-				w.miss(l, miss)
-			}
-		}
+		w.secondNeighbours(h, density, bond)
 	case w.symmetric:
 		w.balanced(h, bond)
 	case h.Ring:

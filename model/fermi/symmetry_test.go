@@ -20,7 +20,7 @@ func TestTurningARing(t *testing.T) {
 			h.Ring = true
 			h.Bond = append(h.Bond, 1)
 		}
-		if _, _, apart := reference(t, h, occ); apart < 1e-5 {
+		if _, _, apart := reference(t, h, occ); apart < 1e-4 {
 			t.Skip("whether these levels are one is a convention, see degenerate")
 		}
 		n := len(h.Site)
@@ -47,7 +47,7 @@ func TestUniformShift(t *testing.T) {
 	rapid.Check(t, func(t *rapid.T) {
 		h := drawChain(t, 1, 40)
 		occ := drawOccupation(t, len(h.Site), symmetryTemperatures...)
-		if _, _, apart := reference(t, h, occ); apart < 1e-5 {
+		if _, _, apart := reference(t, h, occ); apart < 1e-4 {
 			t.Skip("whether these levels are one is a convention, see degenerate")
 		}
 		c := drawEnergy(t, "shift")
@@ -84,7 +84,7 @@ func TestParticlesAndHoles(t *testing.T) {
 		if h.Ring && len(h.Site)%2 == 1 {
 			h.Ring, h.Bond = false, h.Bond[1:]
 		}
-		if _, _, apart := reference(t, h, occ); apart < 1e-5 {
+		if _, _, apart := reference(t, h, occ); apart < 1e-4 {
 			t.Skip("whether these levels are one is a convention, see degenerate")
 		}
 		spin := float64(occ.Spin)

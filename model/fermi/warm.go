@@ -45,8 +45,13 @@ func (p *poleSolver) solveWarm(ctx context.Context, h *Hamiltonian, spin, perSpi
 	enough := max(1e-13*min(perSpin, size-perSpin), 4e-16*size)
 	before, now := &w.trials[0], &w.trials[1]
 	mu := min(max(w.mu, r.lo), r.hi)
-	if p.half {
+	switch {
+	case p.half:
 		mu = p.middle
+	case st.Lowest-st.Highest > wideGap*temperature && (mu < st.Highest || mu > st.Lowest):
+		// The last chain was a different one, and there is no coming back from a
+		// band into a gap by slopes.
+		mu, r.slope = st.ChemicalPotential, 0
 	}
 	for range most {
 		if err := p.try(ctx, h, mu, spin, key, before); err != nil {
@@ -58,8 +63,10 @@ func (p *poleSolver) solveWarm(ctx context.Context, h *Hamiltonian, spin, perSpi
 			r.slope = p.firstSlope(now.excess, key, st)
 		}
 		exact := math.Abs(now.excess) <= enough
-		// Interpolating between the two leaves |N″|δδ′/2N′², where N″ ≲ N′/T.
-		close := r.known > 1 && math.Abs(now.excess*before.excess) <= 2e-13*size*temperature*r.slope
+		// Interpolating between the two leaves |N″δδ′/2N′²|, where N″ ≲ N′/T and
+		// N′ is the slope between them.
+		slope := (now.excess - before.excess) / (now.mu - before.mu)
+		close := r.known > 1 && math.Abs(now.excess*before.excess) <= 2e-13*size*temperature*slope
 		if exact || close || r.stuck() {
 			if exact || r.known == 1 {
 				before = now
@@ -73,10 +80,14 @@ func (p *poleSolver) solveWarm(ctx context.Context, h *Hamiltonian, spin, perSpi
 	return fmt.Errorf("%w: no chemical potential between %g and %g gives %g electrons per spin at temperature %g", errUnresolved, r.lo, r.hi, perSpin, temperature)
 }
 
+// wideGap is the gap, in units of the temperature, across which so few
+// electrons are excited that N(μ) changes exponentially.
+const wideGap = 8
+
 // firstSlope guesses dN/dμ: so that the step is half of T when the number of
 // electrons excited across a gap decides, else as for an even band.
 func (p *poleSolver) firstSlope(excess float64, key warmKey, st *State) float64 {
-	if st.Lowest-st.Highest > 8*key.temperature {
+	if st.Lowest-st.Highest > wideGap*key.temperature {
 		return 2 * math.Abs(excess) / key.temperature
 	}
 	filling := key.perSpin / float64(key.sites)

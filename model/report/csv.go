@@ -2,9 +2,12 @@ package report
 
 import (
 	"encoding/csv"
+	"errors"
 	"fmt"
 	"io"
+	"io/fs"
 	"math"
+	"math/rand/v2"
 	"os"
 	"path/filepath"
 	"strconv"
@@ -15,17 +18,21 @@ import (
 // CSV writes the portrait into a folder, which is made if it is not there:
 // answers.csv, doubts.csv and one file for each set of curves. Numbers have the
 // digits that read back as the same number; what is not finite is left empty.
-// It returns the files written. Each appears whole or not at all.
+// It returns the files written. Each appears whole or not at all, and one that
+// this chain does not have is removed: it would be another chain's.
 func CSV(dir string, p *study.Portrait) ([]string, error) {
 	if err := os.MkdirAll(dir, 0o755); err != nil {
 		return nil, err
 	}
 	var written []string
 	for _, t := range tables(p) {
+		path := filepath.Join(dir, t.file)
 		if len(t.rows) == 0 {
+			if err := os.Remove(path); err != nil && !errors.Is(err, fs.ErrNotExist) {
+				return written, err
+			}
 			continue
 		}
-		path := filepath.Join(dir, t.file)
 		if err := writeWhole(path, t.write); err != nil {
 			return written, err
 		}
@@ -109,7 +116,8 @@ func cell(v float64) string {
 
 // writeWhole writes a file beside its place and then moves it there.
 func writeWhole(path string, write func(io.Writer) error) (err error) {
-	f, err := os.CreateTemp(filepath.Dir(path), "."+filepath.Base(path)+"-*")
+	name := fmt.Sprintf(".%s-%08x", filepath.Base(path), rand.Uint32())
+	f, err := os.OpenFile(filepath.Join(filepath.Dir(path), name), os.O_WRONLY|os.O_CREATE|os.O_EXCL, 0o666)
 	if err != nil {
 		return err
 	}
@@ -122,9 +130,7 @@ func writeWhole(path string, write func(io.Writer) error) (err error) {
 		f.Close()
 		return fmt.Errorf("%s: %w", path, err)
 	}
-	if err = f.Chmod(0o644); err == nil {
-		err = f.Sync()
-	}
+	err = f.Sync()
 	if cerr := f.Close(); err == nil {
 		err = cerr
 	}

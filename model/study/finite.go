@@ -1,9 +1,10 @@
 package study
 
 import (
+	"cmp"
 	"context"
 	"math"
-	"sort"
+	"slices"
 
 	"example.org/twokf/model"
 	"example.org/twokf/model/band"
@@ -11,7 +12,7 @@ import (
 )
 
 // mostLevels is the longest chain whose levels are all computed (the cost grows
-// as N²); of longer ones only the gap edges are known.
+// as N²); of longer ones only the gap edges, or a sample, are known.
 const mostLevels = 4096
 
 var latticeStage = stage{
@@ -90,38 +91,87 @@ func amplitude(x []float64, q float64, sites int) float64 {
 	return a
 }
 
+// plotted is how finely sampled levels are found, as a part of the range of all:
+// half a dot of the tallest plot.
+const plotted = 5e-4
+
 var levelStage = stage{
 	name:   "levels",
 	inputs: finiteOf,
 	keep:   func(to, from *Portrait) { to.Levels = from.Levels },
-	run: func(ctx context.Context, in *inquiry) error {
+	run: func(ctx context.Context, in *inquiry) (err error) {
 		c := in.chain
-		if in.portrait.Lattice == nil || c.Sites > mostLevels {
+		if in.portrait.Lattice == nil {
 			return nil
 		}
-		energy, err := in.solver.Levels(ctx, nil, relax.Hamiltonian(c, in.portrait.Lattice.Lattice))
-		if err != nil {
-			return err
+		h := relax.Hamiltonian(c, in.portrait.Lattice.Lattice)
+		out := &Levels{}
+		switch few := in.settings.Levels; {
+		case few > 0 && c.Sites > few:
+			numbers := levelSample(c, few)
+			lo, hi := h.Bounds()
+			out.Energy, err = in.solver.SampleLevels(ctx, nil, h, numbers, plotted*(hi-lo))
+			out.K = places(c, numbers)
+		case c.Sites <= mostLevels:
+			out.Energy, err = in.solver.Levels(ctx, nil, h)
+			out.K = places(c, nil)
+		default:
+			return nil
 		}
-		in.portrait.Levels = &Levels{Energy: energy, K: places(c)}
-		return nil
+		if err == nil {
+			in.portrait.Levels = out
+		}
+		return err
 	},
 }
 
-// places returns, for the levels of a chain in ascending order, the wave
-// vectors |k| of the undistorted chain's levels in ascending order of energy: a
-// level is drawn where the undistorted level of the same number stands, so that
-// a gap at E_F opens at kF.
-func places(c model.Chain) []float64 {
-	b := band.Of(c)
-	k := make([]float64, c.Sites)
-	for m := range k {
-		if c.Boundary == model.Ring {
-			k[m] = 2 * math.Pi * float64((m+1)/2) / float64(c.Sites)
-		} else {
-			k[m] = math.Pi * float64(m+1) / float64(c.Sites+1)
-		}
+// levelSample returns the numbers of levels that show the bands of a long chain:
+// most of them evenly over all, some next to each other about the Fermi level.
+func levelSample(c model.Chain, few int) []int {
+	n, _ := c.Count()
+	fermi, near := n/c.Spin, few/8
+	var numbers []int
+	for i := range few - 2*near {
+		numbers = append(numbers, i*(c.Sites-1)/max(1, few-2*near-1))
 	}
-	sort.SliceStable(k, func(i, j int) bool { return b.Energy(k[i]) < b.Energy(k[j]) })
+	for m := max(0, fermi-near); m < min(c.Sites, fermi+near); m++ {
+		numbers = append(numbers, m)
+	}
+	slices.Sort(numbers)
+	return slices.Compact(numbers)
+}
+
+// places returns, for the levels of the given numbers (nil: all) of a chain in
+// ascending order, the wave vectors |k| of the undistorted chain's levels of the
+// same numbers: a level is drawn where the undistorted level of its number
+// stands, so that a gap at E_F opens at kF.
+func places(c model.Chain, numbers []int) []float64 {
+	at := func(m int) float64 {
+		if c.Boundary == model.Ring {
+			return 2 * math.Pi * float64((m+1)/2) / float64(c.Sites)
+		}
+		return math.Pi * float64(m+1) / float64(c.Sites+1)
+	}
+	b := band.Of(c)
+	order := func(m int) int { return m } // the band rises from 0 to π …
+	if 4*math.Abs(c.NextHopping) > c.Hopping {
+		sorted := make([]int, c.Sites) // … unless t2 bends it
+		for m := range sorted {
+			sorted[m] = m
+		}
+		slices.SortStableFunc(sorted, func(i, j int) int { return cmp.Compare(b.Energy(at(i)), b.Energy(at(j))) })
+		order = func(m int) int { return sorted[m] }
+	}
+	if numbers == nil {
+		k := make([]float64, c.Sites)
+		for m := range k {
+			k[m] = at(order(m))
+		}
+		return k
+	}
+	k := make([]float64, len(numbers))
+	for i, m := range numbers {
+		k[i] = at(order(m))
+	}
 	return k
 }

@@ -18,6 +18,7 @@ type Settings struct {
 	Publish  func(*Portrait) // if not nil, called after each stage, on the caller's goroutine
 	Progress func(Progress)  // if not nil, called now and then inside long stages, never concurrently
 	Jobs     int             // cores to use; 0 or 1 means one
+	Levels   int             // if > 0, no more than about so many levels, to the accuracy of a plot; else all, exactly
 }
 
 // stage is one part of the question.
