@@ -54,7 +54,7 @@ type Evidence struct {
 
 	CouplingBond, CouplingSite float64 // λ
 	WeakGap                    float64 // predicted gap of the infinite chain, weak coupling
-	TransitionTemperature      float64
+	TransitionTemperature      float64 // where any q first goes unstable on cooling; 0: nowhere
 }
 
 // check weighs one doubt; ok is false where it does not apply.

@@ -20,7 +20,7 @@ const (
 // speak of; ok is false elsewhere. demanded is how many the electrons and the
 // length of the ring ask for: |2N_e/g_s − N|, one for each electron that spin
 // ½ electrons are away from half filling (W. P. Su, J. R. Schrieffer, A. J.
-// Heeger, Phys. Rev. B 22, 2099 (1980)), one more where a ring's parity needs it.
+// Heeger, Phys. Rev. B 22, 2099 (1980)), one more where the parity of N needs it.
 func Kinks(c model.Chain, l *Lattice) (found, demanded int, ok bool) {
 	n, _ := c.Count()
 	if c.Sites < 4 || math.Abs(float64(n)/float64(c.Spin*c.Sites)-0.5) > nearHalf {
@@ -47,14 +47,12 @@ func Kinks(c model.Chain, l *Lattice) (found, demanded int, ok bool) {
 		last = v
 	}
 	demanded = int(math.Abs(math.Round(2*float64(n)/float64(c.Spin)) - float64(c.Sites)))
-	if c.Boundary == model.Ring {
-		// across the seam (−1)^i changes its sign on an odd ring
-		if (last*first < 0) != (c.Sites%2 == 1) {
-			found++
-		}
-		if demanded%2 != c.Sites%2 {
-			demanded++
-		}
+	if demanded%2 != c.Sites%2 { // an odd chain has strong bonds at both ends, an odd ring no way round
+		demanded++
+	}
+	// across the seam of an odd ring (−1)^i changes its sign
+	if c.Boundary == model.Ring && (last*first < 0) != (c.Sites%2 == 1) {
+		found++
 	}
 	return found, demanded, true
 }

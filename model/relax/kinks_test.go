@@ -27,6 +27,16 @@ func TestKinks(t *testing.T) {
 	}
 }
 
+// TestOpenChainOfOddLength: both ends want a strong bond, so one kink is asked
+// for.
+func TestOpenChainOfOddLength(t *testing.T) {
+	c := polyacetylene(81, 81)
+	c.Boundary = model.Open
+	if found, demanded, ok := Kinks(c, relaxed(t, c, Settings{})); !ok || found != 1 || demanded != 1 {
+		t.Errorf("%d kinks, %d demanded, %v; want 1, 1, true", found, demanded, ok)
+	}
+}
+
 // TestKinksLeftByAPoorStart: a start with two kinks too many ends with two
 // kinks too many, and they are counted.
 func TestKinksLeftByAPoorStart(t *testing.T) {

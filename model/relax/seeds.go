@@ -105,15 +105,20 @@ func (s sower) pattern(name string, bonds, sites float64, shape func(i float64) 
 		if c.Boundary == model.Open {
 			count--
 		}
-		amplitude := bonds * seedGap * c.Hopping / 2 / c.Bond.Coupling
-		seed.Stretch = fill(count, amplitude, shape)
+		seed.Stretch = fill(count, bonds*seedAmplitude(c, c.Bond)/2, shape)
 	}
 	if c.Site.Active() {
-		// without a band the local mode itself sets the scale
-		scale := max(c.Hopping, c.Site.Coupling*c.Site.Coupling/c.Site.Stiffness)
-		seed.SiteMode = fill(c.Sites, sites*seedGap*scale/c.Site.Coupling, shape)
+		seed.SiteMode = fill(c.Sites, sites*seedAmplitude(c, c.Site), shape)
 	}
 	return seed
+}
+
+// seedAmplitude returns the amplitude of a branch that changes matrix elements
+// by seedGap of the hopping, or of the branch's own energy g²/K where nothing
+// hops; but no more than electrons can hold, (g/K)·g_s.
+func seedAmplitude(c model.Chain, p model.Phonon) float64 {
+	own := p.Coupling / p.Stiffness
+	return min(seedGap*max(c.Hopping/p.Coupling, own), float64(c.Spin)*own)
 }
 
 func fill(n int, amplitude float64, shape func(i float64) float64) []float64 {

@@ -34,7 +34,7 @@ func (p *Portrait) evidence() doubt.Evidence {
 	}
 	if p.Transition != nil {
 		e.CouplingBond, e.CouplingSite = p.Transition.CouplingBond, p.Transition.CouplingSite
-		e.WeakGap, e.TransitionTemperature = p.Transition.WeakGap, p.Transition.Temperature
+		e.WeakGap, e.TransitionTemperature = p.Transition.WeakGap, p.Transition.First
 	}
 	return e
 }

@@ -60,8 +60,9 @@ type expectation struct {
 	open       bool // partly filled level
 }
 
-// Extreme but legal chains come to their limits. All expectations are closed
-// forms, derived by hand.
+// Extreme but legal chains come to their limits. The expectations are closed
+// forms, derived by hand, but for some T_P, which is that of a longer chain: it
+// belongs to the infinite one.
 func TestExtremeChains(t *testing.T) {
 	none := math.NaN()
 	set := func(c model.Chain, assignments ...string) model.Chain {

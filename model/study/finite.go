@@ -98,6 +98,7 @@ const plotted = 5e-4
 var levelStage = stage{
 	name:   "levels",
 	inputs: finiteOf,
+	holds:  func(prev *Portrait, set Settings) bool { return prev.levels == set.Levels },
 	keep:   func(to, from *Portrait) { to.Levels = from.Levels },
 	run: func(ctx context.Context, in *inquiry) (err error) {
 		c := in.chain

@@ -1,6 +1,7 @@
 package study_test
 
 import (
+	"context"
 	"math"
 	"testing"
 
@@ -132,7 +133,10 @@ var halfFilling = []struct{ lambda, bondGap, bondT, siteGap, siteT float64 }{
 func ratioOf(t *testing.T, site bool, lambda float64) (gap, temperature float64) {
 	t.Helper()
 	sites := 4 * int(math.Ceil(120/gapOfHalfFilling(site, lambda)/4))
-	p := portraitOf(t, halfFilledRing(site, max(sites, 40), lambda))
+	p, err := study.Run(context.Background(), halfFilledRing(site, max(sites, 40), lambda), study.Settings{Levels: 20})
+	if err != nil {
+		t.Fatal(err)
+	}
 	if !p.Lattice.Converged {
 		t.Errorf("λ = %g is not converged", lambda)
 	}

@@ -106,24 +106,41 @@ func BenchmarkAgainstPlain(b *testing.B) {
 	})
 }
 
-// BenchmarkTurn is one turn of the temperature knob at 200 sites, all parts of
-// the portrait converged.
+// BenchmarkTurn is one turn of the temperature or of the coupling knob, all parts
+// of the portrait converged, as the bench asks for it.
 func BenchmarkTurn(b *testing.B) {
-	for _, n := range []int{200, 2000} {
-		b.Run(fmt.Sprint(n), func(b *testing.B) {
+	for _, n := range []int{200, 2000, 20_000, 200_000} {
+		turn := func(b *testing.B, change func(*model.Chain)) {
 			c := model.Chain{Energy: model.UnitEV, Sites: n, Hopping: 2.5, Spin: 2, Filling: 1, Temperature: 0.02,
 				Bond: model.Phonon{Present: true, Coupling: 4.1, Stiffness: 21, Frequency: 0.16}}
-			p, err := Run(context.Background(), c, Settings{})
+			set := Settings{Levels: 160, Jobs: 2}
+			p, err := Run(context.Background(), c, set)
 			if err != nil {
 				b.Fatal(err)
 			}
+			var first time.Duration
 			b.ReportAllocs()
 			for b.Loop() {
-				c.Temperature = 0.045 - c.Temperature // 0.02, 0.025, 0.02, …
-				if p, err = Run(context.Background(), c, Settings{Previous: p}); err != nil || !p.Complete {
+				change(&c)
+				began, seen := time.Now(), false
+				set.Previous = p
+				set.Publish = func(*Portrait) {
+					if !seen {
+						seen = true
+						first += time.Since(began)
+					}
+				}
+				if p, err = Run(context.Background(), c, set); err != nil || !p.Complete {
 					b.Fatal(err)
 				}
 			}
+			b.ReportMetric(float64(first.Microseconds())/float64(b.N)/1000, "ms-to-first")
+		}
+		b.Run(fmt.Sprintf("temperature/%d", n), func(b *testing.B) {
+			turn(b, func(c *model.Chain) { c.Temperature = 0.045 - c.Temperature }) // 0.02, 0.025, 0.02, …
+		})
+		b.Run(fmt.Sprintf("coupling/%d", n), func(b *testing.B) {
+			turn(b, func(c *model.Chain) { c.Bond.Coupling = 8.3 - c.Bond.Coupling }) // 4.1, 4.2, 4.1, …
 		})
 	}
 }

@@ -28,6 +28,7 @@ type Portrait struct {
 	Complete bool      // every stage has finished
 
 	finished map[string]bool // stages that have run, well or badly
+	levels   int             // Settings.Levels that Levels were found with
 }
 
 // Trouble is a stage that failed, in words for the user.

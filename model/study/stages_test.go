@@ -2,6 +2,7 @@ package study_test
 
 import (
 	"context"
+	"math"
 	"slices"
 	"strings"
 	"testing"
@@ -160,6 +161,45 @@ func TestDoubtsAreAlwaysWeighed(t *testing.T) {
 	}
 	if d := difference(before.Doubts, after.Doubts); d != "" {
 		t.Error(d)
+	}
+}
+
+// Levels that were found for a plot only are not taken for all of them, nor the
+// other way round.
+func TestSampledLevelsAreNotTakenForAll(t *testing.T) {
+	c := mixed(t)
+	const few = 40
+	sampled, err := study.Run(context.Background(), c, study.Settings{Levels: few})
+	if err != nil {
+		t.Fatal(err)
+	}
+	all, err := study.Run(context.Background(), c, study.Settings{Previous: sampled})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if n := len(sampled.Levels.Energy); n > few || n < few/2 {
+		t.Errorf("%d levels instead of about %d", n, few)
+	}
+	if d := difference(portraitOf(t, c).Levels, all.Levels); d != "" {
+		t.Errorf("all levels, after some: %s", d)
+	}
+	again, err := study.Run(context.Background(), c, study.Settings{Previous: all, Levels: few})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if d := difference(sampled.Levels, again.Levels); d != "" {
+		t.Errorf("some levels, after all: %s", d)
+	}
+	for i, k := range sampled.Levels.K { // to half a dot of a plot
+		j := slices.Index(all.Levels.K, k)
+		if j < 0 {
+			t.Fatalf("no level stands at %g", k)
+		}
+		width := all.Levels.Energy[c.Sites-1] - all.Levels.Energy[0]
+		near := min(math.Abs(all.Levels.Energy[j]-sampled.Levels.Energy[i]), math.Abs(all.Levels.Energy[min(j+1, c.Sites-1)]-sampled.Levels.Energy[i])) // ±k stand at one place
+		if near > 1e-3*width {
+			t.Errorf("level at %g is %g, expected %g", k, sampled.Levels.Energy[i], all.Levels.Energy[j])
+		}
 	}
 }
 

@@ -28,6 +28,7 @@ type stage struct {
 	// chains with equal inputs have the same answer. This is the one place where
 	// the dependence is written down.
 	inputs func(model.Chain) model.Chain
+	holds  func(prev *Portrait, set Settings) bool // whether it fits these settings too; nil: always
 	run    func(context.Context, *inquiry) error
 	keep   func(to, from *Portrait) // takes the stage's part over
 }
@@ -55,7 +56,7 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Portrait, error) {
 		return nil, err
 	}
 	in := &inquiry{chain: c, settings: set, started: time.Now()}
-	in.portrait.Chain = c
+	in.portrait.Chain, in.portrait.levels = c, set.Levels
 	in.portrait.finished = make(map[string]bool, len(stages))
 	todo := in.takeOver()
 	for _, st := range todo {
@@ -79,7 +80,7 @@ func (in *inquiry) takeOver() (todo []stage) {
 	last := len(stages) - 1
 	for i, st := range stages {
 		if i < last && prev != nil && prev.finished[st.name] && prev.trouble(st.name) == nil &&
-			st.inputs(prev.Chain) == st.inputs(in.chain) {
+			st.inputs(prev.Chain) == st.inputs(in.chain) && (st.holds == nil || st.holds(prev, in.settings)) {
 			st.keep(&in.portrait, prev)
 			in.portrait.finished[st.name] = true
 			continue
@@ -93,6 +94,7 @@ func (in *inquiry) takeOver() (todo []stage) {
 func (in *inquiry) do(ctx context.Context, st stage) error {
 	err := ctx.Err()
 	if err == nil {
+		in.progress(st.name, 0, "")
 		err = st.run(ctx, in)
 	}
 	if ctx.Err() != nil {
