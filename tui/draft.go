@@ -8,6 +8,7 @@ import (
 	"sort"
 	"strconv"
 	"strings"
+	"sync"
 	"syscall"
 	"time"
 
@@ -16,13 +17,21 @@ import (
 	"example.org/twokf/model"
 )
 
-// drafts keeps unsaved work in the user's state folder, one file a session, so
-// that a crash, a lost line or a quick q loses nothing.
+// drafts keeps unsaved work in the user's state folder, one file for each chain
+// that was opened, so that a crash, a lost line or a quick q loses nothing.
 type drafts struct {
-	dir  string // "" where there is no place for them
-	own  string // this session's file
-	tick int    // latest write that was asked for
-	old  []draft
+	dir  string  // "" where there is no place for them
+	made int     // files that this session has named
+	tick int     // latest write that was asked for
+	old  []draft // of earlier sessions, the latest first
+}
+
+// draftFile is where the unsaved work on one opened chain is kept. Writes of it
+// run beside the keys: one that is overtaken does nothing.
+type draftFile struct {
+	path string
+	sync.Mutex
+	tick int // of the latest write
 }
 
 // draft is the unsaved chain of an earlier session.
@@ -47,7 +56,7 @@ func openDrafts(dir string) drafts {
 		return drafts{}
 	}
 	if dir == "" {
-		if dir = os.Getenv("XDG_STATE_HOME"); dir == "" {
+		if dir = os.Getenv("XDG_STATE_HOME"); !filepath.IsAbs(dir) {
 			home, err := os.UserHomeDir()
 			if err != nil {
 				return drafts{}
@@ -56,11 +65,11 @@ func openDrafts(dir string) drafts {
 		}
 		dir = filepath.Join(dir, "twokf")
 	}
-	d := drafts{dir: dir, own: filepath.Join(dir, fmt.Sprintf("unsaved-%d.toml", os.Getpid()))}
+	d := drafts{dir: dir}
 	found, _ := filepath.Glob(filepath.Join(dir, "unsaved-*.toml"))
 	for _, path := range found {
-		info, err := os.Stat(path)
-		if err != nil || inUse(path) {
+		info, err := os.Lstat(path)
+		if err != nil || !info.Mode().IsRegular() || inUse(path) {
 			continue
 		}
 		d.old = append(d.old, draft{path, info.ModTime()})
@@ -73,9 +82,10 @@ func openDrafts(dir string) drafts {
 	return d
 }
 
-// inUse reports whether the session that writes a draft is still running.
+// inUse reports whether the session that writes a draft is still running. One
+// with this process's own number is an earlier one's: it has been given again.
 func inUse(path string) bool {
-	text := strings.TrimSuffix(strings.TrimPrefix(filepath.Base(path), "unsaved-"), ".toml")
+	text, _, _ := strings.Cut(strings.TrimPrefix(filepath.Base(path), "unsaved-"), "-")
 	pid, err := strconv.Atoi(text)
 	if err != nil || pid <= 0 || pid == os.Getpid() {
 		return false
@@ -106,36 +116,55 @@ func (d *drafts) soon() tea.Cmd {
 	return tea.Tick(draftDelay, func(time.Time) tea.Msg { return draftMsg{tick} })
 }
 
+// file names a new draft, unlike any other session's.
+func (d *drafts) file() *draftFile {
+	if d.dir == "" {
+		return nil
+	}
+	d.made++
+	name := fmt.Sprintf("unsaved-%d-%x-%d.toml", os.Getpid(), time.Now().UnixNano(), d.made)
+	return &draftFile{path: filepath.Join(d.dir, name)}
+}
+
 // write writes the draft unless a later change has been made; it works beside
 // the keys.
-func (d *drafts) write(c model.Chain, edited bool, m draftMsg) tea.Cmd {
+func (d *drafts) write(w work, m draftMsg) tea.Cmd {
 	if m.tick != d.tick {
 		return nil
 	}
-	own := *d
+	edited := w.edited()
 	return func() tea.Msg {
-		own.keep(c, edited)
+		w.origin.draft.keep(w.chain, edited, m.tick)
 		return nil
 	}
 }
 
+// keep writes the draft at once, and returns its path if there is one.
+func (d *drafts) keep(w work) string { return w.origin.draft.keep(w.chain, w.edited(), d.tick) }
+
 // keep writes the draft of an edited chain, and removes that of one that is
 // safe in a file. It returns the draft's path if there is one.
-func (d *drafts) keep(c model.Chain, edited bool) string {
-	if d.dir == "" {
+func (f *draftFile) keep(c model.Chain, edited bool, tick int) string {
+	if f == nil {
 		return ""
 	}
+	f.Lock()
+	defer f.Unlock()
+	if tick < f.tick {
+		return ""
+	}
+	f.tick = tick
 	if !edited {
-		os.Remove(d.own)
+		os.Remove(f.path)
 		return ""
 	}
-	if err := os.MkdirAll(d.dir, 0o700); err != nil {
+	if err := os.MkdirAll(filepath.Dir(f.path), 0o700); err != nil {
 		return ""
 	}
-	if err := model.Save(d.own, c); err != nil {
+	if err := model.Save(f.path, c); err != nil {
 		return ""
 	}
-	return d.own
+	return f.path
 }
 
 // pickUp puts the latest draft of an earlier session on the bench.
@@ -145,22 +174,16 @@ func (b *Bench) pickUp() tea.Cmd {
 		b.say("no unsaved chain of an earlier session is kept")
 		return nil
 	}
-	f, err := os.Open(d.path)
-	if err != nil {
-		b.complain(err)
-		return nil
-	}
-	defer f.Close()
-	c, err := model.Read(f, d.path)
-	if err != nil {
-		b.complain(err)
-		return nil
-	}
-	cmd := b.change(c)
-	b.from, b.file, b.saved = "unsaved", "", model.Chain{}
-	b.drafts.keep(c, true) // it is this session's now
-	os.Remove(d.path)
 	b.drafts.old = b.drafts.old[1:]
+	c, err := readFile(d.path)
+	if err != nil {
+		b.complain(err)
+		return nil
+	}
+	cmd := b.take(c, origin{from: "unsaved"})
 	b.say("picked up the chain of " + d.when.Format("2 Jan 15:04"))
+	if b.drafts.keep(b.work) != "" { // it is this session's now
+		os.Remove(d.path)
+	}
 	return cmd
 }

@@ -19,8 +19,8 @@ type update struct {
 	progress *study.Progress
 }
 
-// Messages of a study. All carry the generation that asked; older ones are
-// dropped.
+// Messages of a study. They carry the generation that asked, or the lag that
+// they are about; older ones are dropped.
 type (
 	startMsg  struct{ gen int }
 	updateMsg struct {
@@ -33,13 +33,15 @@ type (
 		portrait *study.Portrait
 		err      error
 	}
-	slowMsg struct{ gen int } // the study has taken long enough for its absence to show
+	slowMsg struct{ lag int } // the picture has lagged behind the knobs for long enough to show it
 )
 
 const (
+	// shownLevels are about as many as the widest plot can tell apart.
+	shownLevels = 160
 	// settle is how long a burst of key presses is gathered before a study is
 	// started, when one is under way already.
-	settle = 30 * time.Millisecond
+	settle = 15 * time.Millisecond
 	// patience is how long the plots may lag behind the knobs before they are
 	// drawn as stale and the progress is shown.
 	patience = 100 * time.Millisecond
@@ -47,21 +49,28 @@ const (
 
 // inquiry is the bench's side of the studies: the newest change wins.
 type inquiry struct {
-	gen    int
+	run    func(context.Context, model.Chain, study.Settings) (*study.Portrait, error)
+	gen    int // of the present study
+	lag    int // how often the picture has fallen behind the knobs
 	cancel context.CancelFunc
 	busy   bool // a study is under way or about to start
-	slow   bool // and has been for longer than patience
+	slow   bool // and the picture has lagged for longer than patience
 	last   *study.Portrait
 	fresh  *study.Portrait // of the present generation, nil before its first part
 	stage  study.Progress
-	err    error
+	err    error // why the present generation has no answer
 }
 
-// ask starts a study of chain c and cancels the one before.
+// lags reports whether what is older than the knobs must be seen to be so.
+func (q *inquiry) lags() bool { return q.slow || q.err != nil }
+
+// ask announces a study and cancels the one before.
 func (q *inquiry) ask() tea.Cmd {
-	wait := time.Duration(0)
-	if q.busy {
-		wait = settle
+	wait, lagging := settle, tea.Cmd(nil)
+	if !q.busy {
+		q.lag++
+		lag := q.lag
+		wait, lagging = 0, tea.Tick(patience, func(time.Time) tea.Msg { return slowMsg{lag} })
 	}
 	if q.cancel != nil {
 		q.cancel()
@@ -70,16 +79,13 @@ func (q *inquiry) ask() tea.Cmd {
 	q.gen++
 	q.busy, q.fresh, q.err, q.stage = true, nil, nil, study.Progress{}
 	gen := q.gen
-	return tea.Batch(
-		tea.Tick(wait, func(time.Time) tea.Msg { return startMsg{gen} }),
-		tea.Tick(patience, func(time.Time) tea.Msg { return slowMsg{gen} }),
-	)
+	return tea.Batch(tea.Tick(wait, func(time.Time) tea.Msg { return startMsg{gen} }), lagging)
 }
 
 // start runs the study that ask announced.
 func (q *inquiry) start(ctx context.Context, c model.Chain, jobs int) tea.Cmd {
 	ctx, q.cancel = context.WithCancel(ctx)
-	gen, previous := q.gen, q.last
+	gen, previous, solve := q.gen, q.last, q.run
 	news := make(chan update, 1)
 	tell := func(u update) {
 		select { // only the newest is kept, but a portrait is not lost to a mere progress
@@ -98,9 +104,10 @@ func (q *inquiry) start(ctx context.Context, c model.Chain, jobs int) tea.Cmd {
 				msg = answeredMsg{gen, nil, fmt.Errorf("the study failed: %v\n%s", r, debug.Stack())}
 			}
 		}()
-		p, err := study.Run(ctx, c, study.Settings{
+		p, err := solve(ctx, c, study.Settings{
 			Previous: previous,
 			Jobs:     jobs,
+			Levels:   shownLevels,
 			Publish:  func(p *study.Portrait) { tell(update{portrait: p}) },
 			Progress: func(p study.Progress) { tell(update{progress: &p}) },
 		})
@@ -146,30 +153,35 @@ func (q *inquiry) onAnswer(m answeredMsg) (current bool) {
 	return true
 }
 
+// onSlow notes that the picture has lagged for long.
+func (q *inquiry) onSlow(m slowMsg) {
+	if m.lag == q.lag && q.busy {
+		q.slow = true
+	}
+}
+
 // picture is what the plots show: the newest part of everything, and which
 // parts are older than the knobs.
 type picture struct {
 	study.Portrait
-	stale struct{ band, response, phonon, lattice, levels bool }
-	fresh *study.Portrait // the parts that are not stale; nil if all are
+	stale struct{ band, response, phonon, lattice, levels, doubts bool }
 }
 
-// picture merges the present study's parts with the last one's.
+// picture merges the present study's parts with the last one's. Energies in
+// another unit than the present chain's are not mixed in.
 func (q *inquiry) picture() picture {
 	var p picture
-	p.fresh = q.fresh
-	if q.fresh != nil {
+	old := q.last
+	switch {
+	case q.fresh == nil && old == nil:
+		return p
+	case q.fresh == nil:
+		p.Chain = old.Chain
+	default:
 		p.Portrait = *q.fresh
-		if q.fresh.Complete {
+		if q.fresh.Complete || old == nil || old.Chain.Energy != q.fresh.Chain.Energy {
 			return p
 		}
-	}
-	old := q.last
-	if old == nil {
-		return p
-	}
-	if q.fresh == nil {
-		p.Chain = old.Chain
 	}
 	if p.Band == nil {
 		p.Band, p.stale.band = old.Band, true
@@ -190,7 +202,7 @@ func (q *inquiry) picture() picture {
 		p.Transition = old.Transition
 	}
 	if p.Doubts == nil {
-		p.Doubts = old.Doubts
+		p.Doubts, p.stale.doubts = old.Doubts, true
 	}
 	return p
 }

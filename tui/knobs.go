@@ -2,6 +2,7 @@ package tui
 
 import (
 	"fmt"
+	"slices"
 	"strings"
 
 	tea "github.com/charmbracelet/bubbletea"
@@ -21,15 +22,54 @@ var knobs = func() []model.Param {
 	return out
 }()
 
+// tableOf is the table of a chain file that a parameter stands in.
+func tableOf(p model.Param) string {
+	table, _, _ := strings.Cut(p.Key, ".")
+	return table
+}
+
 // branchOf names the phonon branch that a parameter belongs to, "" for none.
 func branchOf(p model.Param) string {
-	switch table, _, _ := strings.Cut(p.Key, "."); table {
+	switch tableOf(p) {
 	case "bond_phonon":
 		return "bond phonon"
 	case "site_phonon":
 		return "site phonon"
 	}
 	return ""
+}
+
+// absent reports whether a parameter is of a branch that the chain lacks.
+func absent(p model.Param, c model.Chain) bool { return branchOf(p) != "" && !p.Given(c) }
+
+// shown returns the knobs that the chain has, and one for each branch that it
+// lacks.
+func (b *Bench) shown() []int {
+	var out []int
+	for i, p := range knobs {
+		if !absent(p, b.chain) || strings.HasSuffix(p.Key, ".coupling") {
+			out = append(out, i)
+		}
+	}
+	return out
+}
+
+// choose goes so many knobs on; from one that is not shown any more it first
+// goes back to the last one that is.
+func (b *Bench) choose(by int) tea.Cmd {
+	shown := b.shown()
+	at, found := slices.BinarySearch(shown, b.knob)
+	if !found {
+		at--
+	}
+	n := len(shown)
+	b.knob = shown[(at+by%n+n)%n]
+	return nil
+}
+
+// zeroIsNone reports whether a parameter that is 0 is one that is not given.
+func zeroIsNone(p model.Param) bool {
+	return strings.HasSuffix(p.Key, ".spacing") || strings.HasSuffix(p.Key, ".frequency")
 }
 
 // symbol is the knob's label.
@@ -40,11 +80,11 @@ func (b *Bench) symbol(p model.Param) string {
 	return p.Symbol
 }
 
-// knobLine returns the knob's name and value, the chosen one marked.
+// knobText is a knob's name and value, the chosen one marked.
 func (b *Bench) knobText(i int) string {
 	p := knobs[i]
 	value, unit := "–", ""
-	if p.Given(b.chain) || branchOf(p) == "" {
+	if !absent(p, b.chain) && !(zeroIsNone(p) && p.Get(b.chain) == 0) {
 		value, unit = p.Format(b.chain), p.Unit(b.chain)
 		if p.Kind == model.Number {
 			value = report.Digits(p.Get(b.chain), 0, 7)
@@ -61,43 +101,6 @@ func (b *Bench) knobText(i int) string {
 	return strings.TrimRight(mark+b.symbol(p)+" "+value+" "+unit, " ")
 }
 
-// shownKnobs returns the knobs that the chain has, and one for each branch that
-// it lacks.
-func (b *Bench) shownKnobs() []int {
-	var out []int
-	for i, p := range knobs {
-		absent := branchOf(p) != "" && !p.Given(b.chain)
-		if !absent || strings.HasSuffix(p.Key, ".coupling") {
-			out = append(out, i)
-		}
-	}
-	return out
-}
-
-// typeValue asks for the chosen knob's value.
-func (b *Bench) typeValue() tea.Cmd {
-	p := knobs[b.knob]
-	label := p.Key
-	if u := p.Unit(b.chain); u != "" {
-		label += " (" + u + ")"
-	}
-	b.prompt = newPrompt(label, p.Format(b.chain), "Enter takes it, Esc leaves it; "+p.Doc)
-	b.prompt.enter = func(b *Bench, text string) (tea.Cmd, error) {
-		c, err := p.Parse(b.chain, text)
-		if err != nil {
-			return nil, err
-		}
-		return b.change(c), nil
-	}
-	return nil
-}
-
-// turnAt turns a knob by the wheel.
-func (b *Bench) turnAt(i, turns int) tea.Cmd {
-	b.knob = i
-	return b.turn(turns, false)
-}
-
 // title is the bench's first line: which chain this is.
 func (b *Bench) title() string {
 	t := b.chain.Title
@@ -108,9 +111,9 @@ func (b *Bench) title() string {
 	if b.edited() {
 		mark = " *"
 	}
-	from := b.from
-	if b.file != "" {
-		from = b.file
+	from := b.origin.from
+	if b.origin.file != "" {
+		from = b.origin.file
 	}
 	return strings.Join(strings.Fields(fmt.Sprintf("%s%s  [%s]", t, mark, from)), " ")
 }

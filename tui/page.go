@@ -60,37 +60,43 @@ func (p *textPage) rows(b *Bench, width, height int) []string {
 	return lines[p.top:min(len(lines), p.top+height)]
 }
 
-// keyPage lists the keys, from the table that dispatches them.
+// keyPage lists the keys, from the table that dispatches them, in two columns
+// where there is room.
 func keyPage(*Bench) page {
+	const keyColumn, twoColumns = 16, 140
 	return &textPage{lines: func(b *Bench, width int) []string {
-		lines := []string{b.look.paint(inkHeading, "keys"), ""}
 		var entries []string
 		for _, a := range b.keys {
 			h := a.binding.Help()
 			name := b.spell(h.Key)
-			entries = append(entries, b.look.paint(inkChosen, name)+strings.Repeat(" ", max(1, 20-ansi.StringWidth(name)))+b.spell(h.Desc))
-		}
-		entries = append(entries, "", b.spell("Mouse: click a knob to choose it, turn the wheel to turn it; click a plot to read it there."))
-		if width < 150 {
-			return append(lines, entries...)
-		}
-		half := (len(entries) + 1) / 2 // two columns where there is room
-		for i := range half {
-			l, r := entries[i], ""
-			if half+i < len(entries) {
-				r = entries[half+i]
+			head := b.look.paint(inkChosen, name) + strings.Repeat(" ", max(1, keyColumn-ansi.StringWidth(name)))
+			for _, l := range wrap(b.spell(h.Desc), width-keyColumn) {
+				entries = append(entries, head+l)
+				head = strings.Repeat(" ", keyColumn)
 			}
-			lines = append(lines, l+strings.Repeat(" ", max(1, width/2-ansi.StringWidth(l)))+r)
 		}
-		return lines
+		if width >= twoColumns {
+			half := (len(entries) + 1) / 2
+			for i, right := range entries[half:] {
+				entries[i] += strings.Repeat(" ", max(1, width/2-ansi.StringWidth(entries[i]))) + right
+			}
+			entries = entries[:half]
+		}
+		lines := append([]string{b.look.paint(inkHeading, "keys"), ""}, entries...)
+		return append(append(lines, ""), wrap(b.spell(mouseHelp), width)...)
 	}}
 }
 
 // doubtPage says every doubt in full, raised or not.
 func doubtPage(*Bench) page {
 	return &textPage{lines: func(b *Bench, width int) []string {
-		lines := []string{b.look.paint(inkHeading, "how far to trust this chain's answers"), ""}
-		for _, d := range b.inquiry.picture().Doubts {
+		pic := b.picture()
+		heading := b.aside(pic.stale.doubts, "how far to trust this chain's answers")
+		lines := []string{b.look.paint(inkHeading, heading), ""}
+		if pic.Doubts == nil {
+			lines = append(lines, "not weighed yet")
+		}
+		for _, d := range pic.Doubts {
 			ink, mark := inkAxis, "  clear   "
 			if d.Verdict > 0 {
 				ink, mark = inkRaised, "! raised  "
@@ -109,10 +115,10 @@ func doubtPage(*Bench) page {
 // answerPage lists every answer with what it is.
 func answerPage(*Bench) page {
 	return &textPage{lines: func(b *Bench, width int) []string {
-		pic := b.inquiry.picture()
 		lines := []string{b.look.paint(inkHeading, "answers"), ""}
-		for _, a := range report.Answers(&pic.Portrait) {
-			symbol, value := b.spell(a.Symbol), b.spell(report.Digits(a.Value, a.Grain, 8)+" "+a.Unit)
+		for _, a := range b.answers() {
+			symbol := b.spell(a.Symbol)
+			value := b.spell(b.aside(a.stale, strings.TrimSpace(report.Digits(a.Value, a.Grain, 8)+" "+a.Unit)))
 			head := b.look.paint(inkChosen, symbol) + strings.Repeat(" ", max(1, 11-ansi.StringWidth(symbol))) +
 				value + strings.Repeat(" ", max(1, 20-ansi.StringWidth(value)))
 			for _, l := range wrap(b.spell(a.About), width-31) {
@@ -120,8 +126,11 @@ func answerPage(*Bench) page {
 				head = strings.Repeat(" ", 31)
 			}
 		}
-		lines = append(lines, "")
-		return append(lines, wrap(b.spell(report.Method(&pic.Portrait)), width)...)
+		if p := b.inquiry.fresh; p != nil {
+			lines = append(lines, "")
+			lines = append(lines, wrap(b.spell(report.Method(p)), width)...)
+		}
+		return lines
 	}}
 }
 
@@ -150,7 +159,7 @@ func (p *presetPage) key(b *Bench, k tea.KeyMsg) tea.Cmd {
 	case "enter":
 		b.page = nil
 		one := p.list[p.at]
-		return b.take(one.Chain, one.Name, "")
+		return b.take(one.Chain, origin{from: one.Name, saved: one.Chain})
 	}
 	return nil
 }

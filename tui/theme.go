@@ -1,6 +1,8 @@
 package tui
 
 import (
+	"strings"
+
 	"github.com/muesli/termenv"
 
 	"example.org/twokf/tui/plot"
@@ -16,7 +18,7 @@ const (
 	inkBare                     // the infinite chain, the bare lattice
 	inkFinite                   // the finite relaxed chain
 	inkDensity                  // density and bond order
-	inkMark                     // kF, 2kF, E_F
+	inkMark                     // kF, 2kF, E_F: the terminal's own
 	inkChosen                   // the knob that is turned
 	inkRaised                   // doubts that are raised, errors
 	inkCount
@@ -26,7 +28,10 @@ const (
 // where the terminal has no colour.
 type look [inkCount]string
 
-const resetStyle = "\x1b[0m"
+const (
+	resetStyle = "\x1b[m"
+	bold       = "\x1b[1m"
+)
 
 func newLook(profile termenv.Profile) look {
 	var l look
@@ -35,12 +40,11 @@ func newLook(profile termenv.Profile) look {
 	}
 	colour := func(hex string) string { return "\x1b[" + profile.Color(hex).Sequence(false) + "m" }
 	l[inkAxis] = colour("#808080")
-	l[inkHeading] = "\x1b[1m"
-	l[inkBare] = colour("#0072B2")
+	l[inkHeading] = bold
+	l[inkBare] = colour("#009E73")
 	l[inkFinite] = colour("#D55E00")
-	l[inkDensity] = colour("#009E73")
-	l[inkMark] = colour("#CC79A7")
-	l[inkChosen] = "\x1b[1m" + colour("#009E73")
+	l[inkDensity] = colour("#CC79A7")
+	l[inkChosen] = bold + colour("#D55E00")
 	l[inkRaised] = colour("#D55E00")
 	return l
 }
@@ -62,4 +66,34 @@ func (l *look) paint(ink plot.Ink, s string) string {
 		return s
 	}
 	return l[ink] + s + resetStyle
+}
+
+// lean drops the sequences of a row that have no effect: a reset that only
+// blanks separate from the next colour, and a colour that is on already.
+func lean(row string) string {
+	var out strings.Builder
+	on, isBold := "", false
+	for {
+		i := strings.IndexByte(row, '\x1b')
+		if i < 0 {
+			return out.String() + row
+		}
+		end := i + strings.IndexByte(row[i:], 'm') + 1
+		text, sequence := row[:i], row[i:end]
+		out.WriteString(text)
+		row = row[end:]
+		switch next := strings.TrimLeft(row, " "); {
+		case sequence == resetStyle && !isBold && strings.HasPrefix(next, "\x1b") && !strings.HasPrefix(next, bold):
+			continue
+		case sequence == resetStyle:
+			on, isBold = "", false
+		case sequence == bold:
+			isBold = true
+		case sequence == on:
+			continue
+		default:
+			on = sequence
+		}
+		out.WriteString(sequence)
+	}
 }

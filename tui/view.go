@@ -17,14 +17,21 @@ type view interface {
 }
 
 // views in the order of their keys.
-var views = []view{bandView{}, chainView{}, chiView{}, phononView{}}
+var views = []view{bandIndex: bandView{}, chainIndex: chainView{}, chiIndex: chiView{}, phononIndex: phononView{}}
+
+const (
+	bandIndex = iota
+	chainIndex
+	chiIndex
+	phononIndex
+)
 
 // scene is all that a view may look at.
 type scene struct {
 	picture
 	large     bool // one plot has the whole screen
 	staggered bool // the lattice pattern is shown with its 2kF oscillation taken out
-	from, to  int  // sites shown by the chain view, from ≤ i < to
+	sites     window
 	reading   float64
 	reads     bool // reading is the abscissa that is read in this view
 	spell     func(string) string
@@ -63,15 +70,4 @@ func span(pad float64, xs ...[]float64) (lo, hi float64, ok bool) {
 	}
 	d := (hi - lo) * pad
 	return lo - d, hi + d, true
-}
-
-// nearest returns the index of the value of ascending xs that is nearest to x.
-func nearest(xs []float64, x float64) int {
-	best := 0
-	for i, v := range xs {
-		if math.Abs(v-x) < math.Abs(xs[best]-x) {
-			best = i
-		}
-	}
-	return best
 }

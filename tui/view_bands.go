@@ -55,13 +55,17 @@ func (bandView) draw(c *plot.Canvas, s *scene) {
 	}
 }
 
+// bandGrain, times the hopping, is what counts as no energy at all.
+const bandGrain = 1e-8
+
 func (bandView) read(s *scene, x float64) string {
 	if s.Band == nil {
 		return ""
 	}
-	i := nearest(s.Band.K, x)
-	text := fmt.Sprintf("k %s  ε %s", inPi(s.Band.K[i]), report.Digits(s.Band.Energy[i], 0, 4))
-	if s.Levels != nil && len(s.Levels.K) > 0 {
+	i := plot.Nearest(s.Band.K, x)
+	digits := func(e float64) string { return report.Digits(e, bandGrain*s.Chain.Hopping, 4) }
+	text := fmt.Sprintf("k %s  ε %s", inPi(s.Band.K[i]), digits(s.Band.Energy[i]))
+	if s.Levels != nil && s.Lattice != nil {
 		// the two levels nearest to this k on either side of the Fermi level
 		below, above := -1, -1
 		for j, k := range s.Levels.K {
@@ -75,10 +79,10 @@ func (bandView) read(s *scene, x float64) string {
 			}
 		}
 		if below >= 0 {
-			text += fmt.Sprintf("  level below EF %s", report.Digits(s.Levels.Energy[below], 0, 4))
+			text += fmt.Sprintf("  level below EF %s", digits(s.Levels.Energy[below]))
 		}
 		if above >= 0 {
-			text += fmt.Sprintf(", above %s", report.Digits(s.Levels.Energy[above], 0, 4))
+			text += fmt.Sprintf(", above %s", digits(s.Levels.Energy[above]))
 		}
 	}
 	return text + " " + s.Chain.Energy.String()
@@ -86,7 +90,7 @@ func (bandView) read(s *scene, x float64) string {
 
 // inPi writes a wave vector as a multiple of π.
 func inPi(q float64) string {
-	switch text := report.Digits(q/math.Pi, 0, 4); text {
+	switch text := report.Digits(q/math.Pi, 1e-9, 4); text {
 	case "0":
 		return "0"
 	case "1":

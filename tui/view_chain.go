@@ -31,10 +31,10 @@ func (chainView) abscissae(s *scene) []float64 {
 // window returns the sites that are shown.
 func (s *scene) window() (from, to int) {
 	n := len(s.Lattice.Electrons.Density)
-	if s.to <= s.from || s.to > n {
+	if s.sites.width() == 0 || s.sites.to > n {
 		return 0, n
 	}
-	return s.from, s.to
+	return s.sites.from, s.sites.to
 }
 
 func places(from, to int) []float64 {
@@ -120,16 +120,17 @@ func (v chainView) title(s *scene) string {
 		return name + " along the chain"
 	}
 	if s.staggered {
-		name = "density n averaged over neighbours"
+		name = "smooth n"
 	}
-	what := "lattice " + patterns[0].name
-	if len(patterns) > 1 {
-		what += ", " + patterns[1].name
+	what := "lattice "
+	for _, p := range patterns {
+		what += p.name
+		if p.unit != "" {
+			what += " (" + p.unit + ")"
+		}
+		what += ", "
 	}
-	if u := patterns[0].unit; u != "" {
-		what += " (" + u + ")"
-	}
-	return what + ", " + name
+	return what + name
 }
 
 // density returns the electrons' pattern that is worth showing, and its name.
@@ -141,54 +142,71 @@ func (s *scene) density() (values []float64, name string) {
 	return e.Density, "density n"
 }
 
-func (chainView) draw(c *plot.Canvas, s *scene) {
+func (v chainView) draw(c *plot.Canvas, s *scene) {
 	if s.Lattice == nil {
 		return
 	}
 	from, to := s.window()
-	x := places(from, to)
-	density, name := s.density()
 	patterns := s.patterns()
-
-	// the lattice has the axis; the density takes its height
-	lo, hi, _ := span(0.06, density)
-	frame := plot.Axis{Min: lo, Max: hi}
-	if len(patterns) > 0 {
-		var all [][]float64
-		for _, p := range patterns {
-			all = append(all, p.values)
-		}
-		l, h, _ := span(0, all...)
-		most := 1.1 * max(-l, h)
-		if most < 1e-9 { // an undistorted chain: do not blow up the rounding
-			most = 1
-		}
-		frame = plot.Axis{Min: -most, Max: most}
-	}
-	c.Frame(plot.Axis{Min: float64(from), Max: float64(max(to-1, from+1)), Name: "site"}, frame, inkAxis)
-	s.markReading(c)
+	sites := plot.Axis{Min: float64(from), Max: float64(max(to-1, from+1)), Name: "site"}
 	if len(patterns) == 0 {
-		m := min(len(density), to)
-		c.Stems(x[:m-from], density[from:m], lo, inkDensity, plot.Dotted)
+		density, _ := s.density()
+		lo, hi, _ := span(0.06, density)
+		c.Frame(sites, plot.Axis{Min: lo, Max: hi}, inkAxis)
+		s.markReading(c)
+		c.Stems(places(from, to), density[from:to], lo, inkDensity, plot.Dotted)
 		return
 	}
-	if s.staggered { // both without their fast oscillation
-		scaled, label := fitInto(smooth(s.Lattice.Electrons.Density, s.Chain.Boundary == model.Ring)[from:to], 0.9*frame.Max)
-		c.Line(x, scaled, inkDensity, plot.Dotted)
-		s.label(c, "n "+label)
-	} else {
-		m := min(len(density), to)
-		scaled, label := fitInto(density[from:m], 0.9*frame.Max)
-		c.Stems(x[:m-from], scaled, 0, inkDensity, plot.Dotted)
-		s.label(c, name[len(name)-1:]+" "+label)
+	most := 0.0
+	for _, p := range patterns {
+		lo, hi, _ := span(0, p.values)
+		most = max(most, 1.1*hi, -1.1*lo)
 	}
-	inks := []plot.Ink{inkFinite, inkBare}
-	shapes := []plot.Pattern{plot.Solid, plot.Dashed}
+	if most < 1e-9 { // an undistorted chain: do not blow up the rounding
+		most = 1
+	}
+	c.Frame(sites, plot.Axis{Min: -most, Max: most}, inkAxis)
+	s.markReading(c)
+	columns, _ := c.Size()
+	dense := to-from > columns // lines between the sites would fill the plot
+	v.drawDensity(c, s, 0.9*most, dense)
+	v.drawPatterns(c, s, patterns, dense)
+}
+
+// drawDensity draws the density, or what stands for it, behind the lattice.
+func (chainView) drawDensity(c *plot.Canvas, s *scene, height float64, dense bool) {
+	from, to := s.window()
+	if s.staggered { // both without their fast oscillation
+		scaled, label := fitInto(smooth(s.Lattice.Electrons.Density, s.Chain.Boundary == model.Ring)[from:to], height)
+		c.Line(places(from, to), scaled, inkDensity, plot.Dotted)
+		s.label(c, "n "+label)
+		return
+	}
+	density, name := s.density()
+	to = min(to, len(density)) // an open chain has a bond less than sites
+	scaled, label := fitInto(density[from:to], height)
+	if dense {
+		c.Points(places(from, to), scaled, inkDensity, plot.Dotted)
+	} else {
+		c.Stems(places(from, to), scaled, 0, inkDensity, plot.Dotted)
+	}
+	s.label(c, name[len(name)-1:]+" "+label)
+}
+
+func (chainView) drawPatterns(c *plot.Canvas, s *scene, patterns []pattern, dense bool) {
+	from, to := s.window()
+	x := places(from, to)
 	for i, p := range patterns {
-		if to-from <= 80 {
-			c.Points(x, p.values[from:to], inks[i], plot.Heavy)
+		y, ink := p.values[from:to], []plot.Ink{inkFinite, inkBare}[i]
+		switch {
+		case dense && !s.staggered:
+			c.Points(x, y, ink, []plot.Pattern{plot.Heavy, plot.Dashed}[i])
+		case !s.staggered:
+			c.Points(x, y, ink, plot.Heavy)
+			fallthrough
+		default: // an amplitude varies slowly and needs no points
+			c.Line(x, y, ink, []plot.Pattern{plot.Solid, plot.Dashed}[i])
 		}
-		c.Line(x, p.values[from:to], inks[i], shapes[i])
 		s.label(c, p.name)
 	}
 }

@@ -67,16 +67,16 @@ func (chiView) read(s *scene, x float64) string {
 		return ""
 	}
 	r := s.Response
-	i := nearest(r.Q, x)
+	i := plot.Nearest(r.Q, x)
 	text := fmt.Sprintf("q %s  χ0 %s", inPi(r.Q[i]), report.Digits(r.Chi[i].Site, 0, 4))
 	if s.Chain.Bond.Present {
 		text += "  χ bond " + report.Digits(r.Chi[i].Bond, 0, 4)
 	}
 	if len(r.RingQ) > 0 {
-		j := nearest(r.RingQ, x)
+		j := plot.Nearest(r.RingQ, x)
 		text += fmt.Sprintf("  ring at %s: %s", inPi(r.RingQ[j]), report.Digits(r.RingChi[j].Site, 0, 4))
 	}
-	return text + " /" + s.Chain.Energy.String()
+	return text + "  (1/" + s.Chain.Energy.String() + ")"
 }
 
 func values[T any](xs []T, get func(T) float64) []float64 {

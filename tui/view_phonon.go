@@ -94,7 +94,7 @@ func (phononView) draw(c *plot.Canvas, s *scene) {
 		}
 	}
 	if bond && site {
-		c.Line(s.Phonon.Q, upper, inkDensity, plot.Solid)
+		c.Line(s.Phonon.Q, upper, inkDensity, plot.Dotted)
 		s.label(c, "upper")
 	}
 	c.Line(s.Phonon.Q, lower, inkFinite, plot.Solid)
@@ -114,7 +114,7 @@ func (phononView) read(s *scene, x float64) string {
 	if s.Phonon == nil {
 		return ""
 	}
-	i := nearest(s.Phonon.Q, x)
+	i := plot.Nearest(s.Phonon.Q, x)
 	b := s.Phonon.Branch[i]
 	text := fmt.Sprintf("q %s  Ω²/ω² %s", inPi(s.Phonon.Q[i]), report.Digits(b.Ratio, 0, 4))
 	unit := s.Chain.Energy.String()

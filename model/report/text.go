@@ -92,6 +92,13 @@ func Summary(c model.Chain) string {
 	return strings.Join(parts, " · ")
 }
 
+// methods spells fermi.State.Method for a person.
+var methods = map[string]string{
+	"dense": "full diagonalisation",
+	"poles": "a sum of resolvents",
+	"waves": "plane waves",
+}
+
 // Method says how the relaxed lattice was found.
 func Method(p *study.Portrait) string {
 	if p.Lattice == nil {
@@ -103,7 +110,7 @@ func Method(p *study.Portrait) string {
 		state = "NOT converged"
 	}
 	return fmt.Sprintf("relaxed from %s: %s in %d iterations, residual %s (wanted %s); electrons by %s; %.3f s",
-		l.Start, state, l.Iterations, Digits(l.Residual, 0, 2), Digits(l.Tolerance, 0, 2), l.Electrons.Method, p.Seconds)
+		l.Start, state, l.Iterations, Digits(l.Residual, 0, 2), Digits(l.Tolerance, 0, 2), methods[l.Electrons.Method], p.Seconds)
 }
 
 func pad(s string, width int) string {

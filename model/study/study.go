@@ -94,7 +94,7 @@ func (in *inquiry) takeOver() (todo []stage) {
 func (in *inquiry) do(ctx context.Context, st stage) error {
 	err := ctx.Err()
 	if err == nil {
-		in.progress(st.name, 0, "")
+		in.progress(st.name, 0, "under way")
 		err = st.run(ctx, in)
 	}
 	if ctx.Err() != nil {

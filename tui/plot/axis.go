@@ -36,7 +36,7 @@ func finite(v float64) bool { return v-v == 0 }
 
 // scale maps values linearly to dots,
 //
-//	dot = zero + (v·pre − lo·pre)·k
+//	dot = zero + nudge + (v·pre − lo·pre)·k
 //
 // where pre is a power of two that keeps all products in range for every lo < hi.
 type scale struct {
@@ -44,6 +44,10 @@ type scale struct {
 	pre, loPre, k float64
 	zero, last    float64 // dots of lo and hi
 }
+
+// nudge, in dots, moves what would fall exactly between two dots off that edge:
+// rounding, which differs between machines, then decides nothing.
+const nudge = 1e-5
 
 // far bounds dot coordinates: far outside, but differences stay finite.
 const far = 1e300
@@ -60,7 +64,7 @@ func newScale(lo, hi float64, zero, last int) scale {
 
 // dot returns the place of v, within ±far; NaN if v is not finite.
 func (s *scale) dot(v float64) float64 {
-	d := s.zero + (v*s.pre-s.loPre)*s.k
+	d := s.zero + nudge + (v*s.pre-s.loPre)*s.k
 	switch {
 	case d > -far && d < far:
 		return d

@@ -9,10 +9,9 @@ import (
 
 // fourCurves draws 4 series of 400 points with marks and a legend.
 type fourCurves struct {
-	x    []float64
-	ys   [4][]float64
-	buf  []byte
-	rows int
+	x   []float64
+	ys  [4][]float64
+	buf []byte
 }
 
 func newFourCurves() *fourCurves {

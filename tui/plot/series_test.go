@@ -149,7 +149,7 @@ func TestFarEndsDoNotBendALine(t *testing.T) {
 	up := bare(5, 2, Braille, unit, unit)
 	up.Line([]float64{0, 1}, []float64{-math.MaxFloat64, math.MaxFloat64}, 1, Solid)
 	for x, dots := range dotsPerColumn(up) {
-		if middle := x == 4 || x == 5; !middle && dots > 0 || x == 4 && dots < 8 {
+		if middle := x == 4 || x == 5; !middle && dots > 0 || x == 5 && dots < 8 { // of the two it is on the edge of, the later
 			t.Errorf("a line from −1.8e308 to 1.8e308 has %d dots in column %d\n%s", dots, x, up)
 		}
 	}
