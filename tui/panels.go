@@ -23,7 +23,7 @@ type drawing struct {
 
 type drawingKey struct {
 	panel     panel
-	parts     [6]any // pointers to the picture's parts
+	parts     [7]any // pointers to the picture's parts
 	stale     bool
 	ascii     bool
 	large     bool
@@ -101,7 +101,7 @@ func (b *Bench) draw(pic *picture, i int) []string {
 	key := drawingKey{
 		panel: p, stale: b.inquiry.lags() && v.stale(pic), ascii: b.ascii, large: b.large >= 0,
 		staggered: b.isStaggered(), sites: b.sites,
-		parts: [6]any{pic.Band, pic.Response, pic.Phonon, pic.Lattice, pic.Levels, pic.Transition},
+		parts: [7]any{pic.Band, pic.Response, pic.Ring, pic.Phonon, pic.Lattice, pic.Levels, pic.Transition},
 		chain: phononNames{int(c.Energy), c.Bond.Present, c.Site.Present, c.Bond.Frequency > 0, c.Site.Frequency > 0},
 	}
 	if b.reading.on && b.reading.view == p.view {

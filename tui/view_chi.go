@@ -35,7 +35,6 @@ func (chiView) draw(c *plot.Canvas, s *scene) {
 	r := s.Response
 	site := values(r.Chi, func(x response.Static) float64 { return x.Site })
 	bond := values(r.Chi, func(x response.Static) float64 { return x.Bond })
-	ring := values(r.RingChi, func(x response.Static) float64 { return x.Site })
 	showBond := s.Chain.Bond.Present
 	_, high, _ := span(0.05, site)
 	if showBond {
@@ -50,8 +49,9 @@ func (chiView) draw(c *plot.Canvas, s *scene) {
 		}
 	}
 	s.markReading(c)
-	if len(ring) > 0 && (s.large || len(ring) < 60) {
-		c.Points(r.RingQ, ring, inkFinite, plot.Heavy)
+	if s.Ring != nil && (s.large || len(s.Ring.Q) < 60) {
+		ring := values(s.Ring.Chi, func(x response.Static) float64 { return x.Site })
+		c.Points(s.Ring.Q, ring, inkFinite, plot.Heavy)
 		s.label(c, "χ0 ring")
 	}
 	if showBond {
@@ -72,9 +72,9 @@ func (chiView) read(s *scene, x float64) string {
 	if s.Chain.Bond.Present {
 		text += "  χ bond " + report.Digits(r.Chi[i].Bond, 0, 4)
 	}
-	if len(r.RingQ) > 0 {
-		j := plot.Nearest(r.RingQ, x)
-		text += fmt.Sprintf("  ring at %s: %s", inPi(r.RingQ[j]), report.Digits(r.RingChi[j].Site, 0, 4))
+	if s.Ring != nil && len(s.Ring.Q) > 0 {
+		j := plot.Nearest(s.Ring.Q, x)
+		text += fmt.Sprintf("  ring at %s: %s", inPi(s.Ring.Q[j]), report.Digits(s.Ring.Chi[j].Site, 0, 4))
 	}
 	return text + "  (1/" + s.Chain.Energy.String() + ")"
 }

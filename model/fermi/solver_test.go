@@ -21,7 +21,7 @@ func TestSolversAgreeWithDiagonalisation(t *testing.T) {
 		h := drawChain(t, 1, 40)
 		occ := drawOccupation(t, len(h.Site), temperatures...)
 		want, next, apart := reference(t, h, occ)
-		if apart < 1e-6 {
+		if apart < 1e-5 {
 			t.Skip("whether these levels are one is a convention, see degenerate")
 		}
 		s := poles[occ.Temperature]

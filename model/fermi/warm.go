@@ -66,7 +66,7 @@ func (p *poleSolver) solveWarm(ctx context.Context, h *Hamiltonian, spin, perSpi
 		// Interpolating between the two leaves |N″δδ′/2N′²|, where N″ ≲ N′/T and
 		// N′ is the slope between them.
 		slope := (now.excess - before.excess) / (now.mu - before.mu)
-		close := r.known > 1 && math.Abs(now.excess*before.excess) <= 2e-13*size*temperature*slope
+		close := r.known > 1 && math.Abs(now.excess*before.excess) <= 2e-14*size*temperature*slope
 		if exact || close || r.stuck() {
 			if exact || r.known == 1 {
 				before = now

@@ -229,10 +229,10 @@ func chiColumns(p *study.Portrait) []column {
 }
 
 func ringColumns(p *study.Portrait) []column {
-	if p.Response == nil || p.Response.RingQ == nil {
+	if p.Ring == nil {
 		return nil
 	}
-	return append([]column{{"ring_wavevector", p.Response.RingQ}}, statics("ring_", p.Response.RingChi)...)
+	return append([]column{{"ring_wavevector", p.Ring.Q}}, statics("ring_", p.Ring.Chi)...)
 }
 
 func statics(prefix string, chi []response.Static) []column {

@@ -16,7 +16,7 @@ import (
 
 // What may be infinite, or not a number, by the portrait's own documentation.
 var (
-	mayBeInfinite = regexp.MustCompile(`^\.(Band\.DensityOfStates|Response\.Peak|Response\.(Chi|RingChi)\[\]\.\w+|Phonon\.Softest|` +
+	mayBeInfinite = regexp.MustCompile(`^\.(Band\.DensityOfStates|Response\.Peak|(Response|Ring)\.Chi\[\]\.\w+|Phonon\.Softest|` +
 		`Phonon\.Branch\[\]\.(Ratio|BondRatio|SiteRatio|Lower|Upper)|Lattice\.Lattice\.Electrons\.(Highest|Lowest)|Doubts\[\]\.Value)$`)
 	mayBeNaN = regexp.MustCompile(`^\.Lattice\.Gap$`)
 )

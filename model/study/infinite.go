@@ -12,11 +12,6 @@ import (
 const (
 	dispersionPoints = 240 // along 0..π, about what the widest screen can show
 	wavevectors      = 300 // of χ and the phonon along 0..π, denser where χ bends
-
-	// allRingWavevectors is the longest ring of which every wave vector is
-	// computed; longer ones are sampled at their wave vectors nearest to the grid
-	// of the infinite chain.
-	allRingWavevectors = 4096
 )
 
 var bandStage = stage{
@@ -50,12 +45,6 @@ var responseStage = stage{
 	inputs: func(c model.Chain) model.Chain {
 		key := bulkOf(c)
 		key.Temperature = c.Temperature
-		if c.Boundary == model.Ring { // the ring's own wave vectors are shown too
-			key.Sites = c.Sites
-			key.Electrons, _ = c.Count()
-		} else {
-			key.Boundary = model.Open
-		}
 		return key
 	},
 	keep: func(to, from *Portrait) { to.Response = from.Response },
@@ -70,45 +59,9 @@ var responseStage = stage{
 			return err
 		}
 		out.PeakQ, out.Peak = bulk.Peak(ctx)
-		if in.chain.Boundary == model.Ring {
-			if err := ringResponse(ctx, in.chain, out); err != nil {
-				return err
-			}
-		}
 		in.portrait.Response = out
 		return nil
 	},
-}
-
-// ringResponse adds the finite ring's χ at its own wave vectors 2πm/N.
-func ringResponse(ctx context.Context, c model.Chain, out *Response) error {
-	n, _ := c.Count()
-	ring, err := response.NewRing(c.Sites, float64(n), c.Spin, c.Hopping, c.NextHopping, c.Temperature)
-	if err != nil {
-		return err
-	}
-	step := 2 * math.Pi / float64(c.Sites)
-	if c.Sites <= allRingWavevectors {
-		out.RingChi = make([]response.Static, c.Sites/2+1)
-		for m := range out.RingChi {
-			out.RingQ = append(out.RingQ, step*float64(m))
-		}
-		return ring.Curve(ctx, out.RingChi)
-	}
-	last := -1
-	for _, q := range out.Q {
-		m := int(math.Round(q / step))
-		if m == last {
-			continue
-		}
-		last = m
-		if err := ctx.Err(); err != nil {
-			return err
-		}
-		out.RingQ = append(out.RingQ, step*float64(m))
-		out.RingChi = append(out.RingChi, ring.At(m))
-	}
-	return nil
 }
 
 var phononStage = stage{

@@ -16,7 +16,8 @@ type Portrait struct {
 	Chain model.Chain
 
 	Band       *Band       // infinite uniform chain
-	Response   *Response   // χ(q, T) of the infinite chain and of the ring
+	Response   *Response   // χ(q, T) of the infinite chain
+	Ring       *Ring       // χ(q, T) of the finite ring; nil for an open chain
 	Phonon     *Phonon     // renormalised phonon of the infinite uniform chain
 	Transition *Transition // mean-field T_P
 	Lattice    *Lattice    // relaxed finite chain
@@ -61,9 +62,14 @@ type Response struct {
 	Q           []float64 // 0..π ascending, denser where χ bends
 	Chi         []response.Static
 	PeakQ, Peak float64 // highest point of the bulk χ0(q, T); Peak +Inf where it diverges
+}
 
-	RingQ   []float64         // the ring's own wave vectors 0..π; nil for an open chain
-	RingChi []response.Static // +Inf where the finite ring's response diverges (open shell, T = 0)
+// Ring holds χ of the finite uniform ring at its own wave vectors.
+type Ring struct {
+	Q   []float64         // 2πm/N in 0..π, ascending; of long rings a sample
+	Chi []response.Static // +Inf where the response diverges (open shell, T = 0)
+
+	complete bool // no sample made for looking at
 }
 
 // Phonon holds the renormalised phonon over wave vectors.

@@ -248,7 +248,7 @@ func TestPresetsAreSolved(t *testing.T) {
 		t.Run(preset.Name, func(t *testing.T) {
 			p := portraitOf(t, preset.Chain)
 			for _, stage := range study.Stages()[:len(study.Stages())-1] {
-				if onlyPart(p, stage) == nil {
+				if onlyPart(p, stage) == nil && !(stage == "ring" && preset.Chain.Boundary == model.Open) {
 					t.Errorf("no part of %s", stage)
 				}
 			}

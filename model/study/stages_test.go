@@ -72,6 +72,8 @@ func onlyPart(p *study.Portrait, stage string) any {
 		return p.Band
 	case stage == "response" && p.Response != nil:
 		return p.Response
+	case stage == "ring" && p.Ring != nil:
+		return p.Ring
 	case stage == "phonon" && p.Phonon != nil:
 		return p.Phonon
 	case stage == "lattice" && p.Lattice != nil:
@@ -103,17 +105,17 @@ func TestWhatAKnobRedoes(t *testing.T) {
 		{mixed(t), "source=invented_again", ""},
 		{mixed(t), "energy=t", ""},
 		{mixed(t), "chain.spacing=4", ""},
-		{mixed(t), "conditions.temperature=0.01", "response phonon lattice levels"},
-		{mixed(t), "chain.sites=200", "response lattice levels"},
+		{mixed(t), "conditions.temperature=0.01", "response phonon lattice levels ring"},
+		{mixed(t), "chain.sites=200", "lattice levels ring"},
 		{openChain, "chain.sites=200", "lattice levels"},
-		{mixed(t), "chain.boundary=open", "response lattice levels"},
-		{byNumber, "chain.sites=200", "band response phonon lattice levels transition"},
+		{mixed(t), "chain.boundary=open", "lattice levels ring"},
+		{byNumber, "chain.sites=200", "band response phonon lattice levels transition ring"},
 		{mixed(t), "electrons.electrons=114", ""}, // what the filling asks for
-		{mixed(t), "electrons.electrons=118", "band response phonon lattice levels transition"},
-		{mixed(t), "electrons.filling=0.601", "band response phonon transition"}, // 114.19 electrons: still 114
-		{mixed(t), "electrons.hopping=0.3", "band response phonon lattice levels transition"},
-		{mixed(t), "electrons.next_hopping=0.01", "band response phonon lattice levels transition"},
-		{mixed(t), "electrons.spin=1", "band response phonon lattice levels transition"},
+		{mixed(t), "electrons.electrons=118", "band response phonon lattice levels transition ring"},
+		{mixed(t), "electrons.filling=0.601", "band response phonon transition ring"}, // 114.19 electrons: still 114
+		{mixed(t), "electrons.hopping=0.3", "band response phonon lattice levels transition ring"},
+		{mixed(t), "electrons.next_hopping=0.01", "band response phonon lattice levels transition ring"},
+		{mixed(t), "electrons.spin=1", "band response phonon lattice levels transition ring"},
 		{mixed(t), "bond_phonon.coupling=0.7", "phonon lattice levels transition"},
 		{mixed(t), "site_phonon.stiffness=1.1", "phonon lattice levels transition"},
 		{mixed(t), "bond_phonon.frequency=0.02", "phonon"},

@@ -18,7 +18,7 @@ type Settings struct {
 	Publish  func(*Portrait) // if not nil, called after each stage, on the caller's goroutine
 	Progress func(Progress)  // if not nil, called now and then inside long stages, never concurrently
 	Jobs     int             // cores to use; 0 or 1 means one
-	Levels   int             // if > 0, no more than about so many levels, to the accuracy of a plot; else all, exactly
+	Levels   int             // if > 0, what a screen can show: about so many levels, to a plot's accuracy; else all that a file asks for
 }
 
 // stage is one part of the question.
@@ -35,7 +35,7 @@ type stage struct {
 
 // stages in the order in which they are done: what is quick and shows the
 // infinite chain first, the relaxed chain next.
-var stages = []stage{bandStage, responseStage, phononStage, latticeStage, levelStage, transitionStage, doubtStage}
+var stages = []stage{bandStage, responseStage, phononStage, latticeStage, levelStage, transitionStage, ringStage, doubtStage}
 
 // inquiry is a study under way.
 type inquiry struct {
