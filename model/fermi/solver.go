@@ -83,7 +83,7 @@ func (s *Solver) Solve(ctx context.Context, h *Hamiltonian, occ Occupation, st *
 	}
 	st.Density = resize(st.Density, len(h.Site))
 	st.BondOrder = resize(st.BondOrder, len(h.Bond))
-	if s.Method == Fastest && h.alike() {
+	if s.Method == Fastest && (occ.Temperature == 0 || len(h.Site) <= longestHot) && h.alike() {
 		st.Method = "waves"
 		s.waves.solve(h, occ, st)
 		return nil

@@ -1,6 +1,7 @@
 package fermi
 
 import (
+	"cmp"
 	"math"
 	"slices"
 )
@@ -14,8 +15,12 @@ import (
 type waves struct {
 	dense             // levels and weights; no matrix
 	cosines []float64 // cos k, in the order of the levels
-	order   []int
 }
+
+// longestHot is the longest uniform ring that is solved by plane waves at T > 0,
+// where finding μ takes a sum of exponentials over all levels for each step and
+// cannot be interrupted; beyond it the sum over poles costs no more.
+const longestHot = 10_000
 
 // alike tells whether a chain is such a ring.
 func (h *Hamiltonian) alike() bool {
@@ -66,27 +71,17 @@ func (w *waves) solve(h *Hamiltonian, occ Occupation, st *State) {
 // fill stores the levels, ascending, and their cos k.
 func (w *waves) fill(h *Hamiltonian) {
 	n := len(h.Site)
-	w.levels, w.cosines, w.order = resize(w.levels, n), resize(w.cosines, n), resize(w.order, n)
-	energy := func(m int) (level, cosine float64) {
-		c := math.Cos(2 * math.Pi * float64(min(m, n-m)) / float64(n)) // ±k to the last bit alike
-		return h.Site[0] - 2*h.Bond[0]*c - 2*h.Next*(2*c*c-1), c
+	w.levels, w.cosines = resize(w.levels, n), resize(w.cosines, n)
+	level := func(c float64) float64 { return h.Site[0] - 2*h.Bond[0]*c - 2*h.Next*(2*c*c-1) }
+	for i := range n { // k = 0, ±1, ±2 …: a band that rises from 0 to π is in order
+		w.cosines[i] = math.Cos(2 * math.Pi * float64((i+1)/2) / float64(n))
+		w.levels[i] = level(w.cosines[i])
 	}
-	for m := range n {
-		w.order[m] = m
-		w.levels[m], _ = energy(m)
+	if h.Bond[0] >= 4*math.Abs(h.Next) {
+		return
 	}
-	byNumber := w.cosines
-	copy(byNumber, w.levels)
-	slices.SortFunc(w.order, func(a, b int) int {
-		switch {
-		case byNumber[a] < byNumber[b]:
-			return -1
-		case byNumber[a] > byNumber[b]:
-			return 1
-		}
-		return a - b
-	})
-	for i, m := range w.order {
-		w.levels[i], w.cosines[i] = energy(m)
+	slices.SortFunc(w.cosines, func(a, b float64) int { return cmp.Compare(level(a), level(b)) })
+	for i, c := range w.cosines {
+		w.levels[i] = level(c)
 	}
 }
