@@ -89,7 +89,7 @@ func TestUniformRingClosedForm(t *testing.T) {
 			check(Poles, sites, n, 1e-10)
 		}
 	}
-	for _, n := range []int{1, 2, 4999, 5000, 5001, 9999} {
+	for _, n := range []int{1, 5000, 9999} {
 		check(Poles, 10000, n, 1e-10)
 	}
 }
