@@ -289,7 +289,11 @@ func (l *progressLine) show(p study.Progress) {
 		return
 	}
 	l.last, l.shown = time.Now(), true
-	fmt.Fprintf(l.out, "\r%s %3.0f %%, %s\x1b[K", p.Stage, 100*p.Done, report.ASCII(p.Detail))
+	left := ""
+	if p.Left >= 2*time.Second {
+		left = fmt.Sprintf(", about %v left", p.Left.Round(time.Second))
+	}
+	fmt.Fprintf(l.out, "\r%s %3.0f %%, %s%s\x1b[K", p.Stage, 100*p.Done, report.ASCII(p.Detail), left)
 }
 
 func (l *progressLine) clear() {

@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"math"
 	"runtime/debug"
 	"sync"
 	"sync/atomic"
@@ -25,8 +26,11 @@ func race(ctx context.Context, walkers []*walker, starts []Seed, set Settings) (
 	var lock sync.Mutex
 	walk := func(w *walker, i int, iterations int) error {
 		name, before := starts[i].Name, 0
-		x := w.vector(starts[i])
-		if ends[i] != nil { // go on
+		var x []float64
+		if ends[i] == nil {
+			x = w.vector(starts[i])
+			starts[i].Stretch, starts[i].SiteMode = nil, nil // as long as the chain
+		} else { // go on
 			x, before = ends[i].x, ends[i].iterations
 		}
 		if err := w.stand(ctx, x); err != nil {
@@ -56,6 +60,7 @@ func race(ctx context.Context, walkers []*walker, starts []Seed, set Settings) (
 	if ctx.Err() != nil {
 		return nil, context.Cause(ctx)
 	}
+	forgetWorse(ends, set.Tolerance)
 	var hopeful []int
 	for i, e := range ends {
 		if e != nil && e.residual > set.Tolerance && !aboveConverged(e, ends, set.Tolerance) {
@@ -68,6 +73,7 @@ func race(ctx context.Context, walkers []*walker, starts []Seed, set Settings) (
 	if ctx.Err() != nil {
 		return nil, context.Cause(ctx)
 	}
+	forgetWorse(ends, set.Tolerance)
 	var good []*end
 	for _, e := range ends {
 		if e != nil {
@@ -88,6 +94,21 @@ func aboveConverged(one *end, all []*end, tolerance float64) bool {
 		}
 	}
 	return false
+}
+
+// forgetWorse lets go of where the ends lie that cannot win any more: those above
+// one that has converged, unless by so little that it may be a tie.
+func forgetWorse(ends []*end, tolerance float64) {
+	for _, e := range ends {
+		if e == nil {
+			continue
+		}
+		for _, other := range ends {
+			if other != nil && other.x != nil && other.residual <= tolerance && other.free < e.free-1e-9*(1+math.Abs(e.free)) {
+				e.x = nil
+			}
+		}
+	}
 }
 
 // sideBySide calls do(worker, 0) … do(worker, n−1) on so many workers and

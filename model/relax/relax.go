@@ -21,6 +21,7 @@ package relax
 import (
 	"context"
 	"math"
+	"slices"
 
 	"example.org/twokf/model"
 	"example.org/twokf/model/fermi"
@@ -111,14 +112,18 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 		return w.lattice(ctx, uniform, uniform, set.Tolerance)
 	}
 
-	starts := set.Starts
+	starts := slices.Clone(set.Starts)
 	if starts == nil {
 		starts = Seeds(c)
 	}
 	if prev := set.Previous; prev != nil && p.fits(prev) {
 		starts = append([]Seed{{Name: "previous", Stretch: prev.Stretch, SiteMode: prev.SiteMode}}, starts...)
 	}
-	for len(walkers) < min(set.Jobs, len(starts)) {
+	jobs := set.Jobs
+	if p.size() > manyCoordinates {
+		jobs = 1 // a walker is most of the memory
+	}
+	for len(walkers) < min(jobs, len(starts)) {
 		walkers = append(walkers, newWalker(p))
 	}
 	ends, err := race(ctx, walkers, starts, set)

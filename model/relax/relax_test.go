@@ -546,16 +546,19 @@ func TestDisplacement(t *testing.T) {
 	near(t, "Σu", sum, 0, 1e-12)
 }
 
-func BenchmarkRelaxPolyacetylene(b *testing.B) {
-	for _, n := range []int{202, 402, 1002} {
+// BenchmarkLength is the cost of a relaxation from one 2kF start on one core.
+func BenchmarkLength(b *testing.B) {
+	for _, n := range []int{200, 1000, 10_000, 100_000, 1_000_000} {
 		b.Run(fmt.Sprint(n), func(b *testing.B) {
+			c := polyacetylene(n, n)
 			b.ReportAllocs()
 			for b.Loop() {
-				l, err := Run(context.Background(), polyacetylene(n, n), Settings{})
+				l, err := Run(context.Background(), c, Settings{Starts: Seeds(c)[:1]})
 				if err != nil || !l.Converged {
-					b.Fatal(err, l)
+					b.Fatal(err)
 				}
 			}
+			b.ReportMetric(float64(b.Elapsed().Nanoseconds())/float64(b.N)/float64(n), "ns/site")
 		})
 	}
 }

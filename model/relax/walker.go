@@ -90,9 +90,10 @@ func (w *walker) at(name string, iterations int) *end {
 
 const (
 	armijo = 1e-4 // part of the promised descent that a step must deliver
-	// flat is the relative change of the free energy below which it is rounding
-	// and the descent is judged by the slopes at both ends instead.
-	flat = 3e-13
+	// flat is the change of the free energy, for each site and in units of the
+	// scale, below which it is the electron solver's rounding and the descent is
+	// judged by the slopes at both ends instead.
+	flat = 2e-12
 	// longest step, as a change of a matrix element in units of the scale.
 	longest      = 0.5
 	mostHalvings = 30
@@ -152,7 +153,7 @@ func (w *walker) search(ctx context.Context) (gone bool, err error) {
 			return false, err
 		}
 		change := w.free - free
-		if math.Abs(change) < flat*math.Abs(free) {
+		if math.Abs(change) < flat*w.scale()*float64(w.sites) {
 			change = length * (slope + dot(w.direction, w.g)) / 2
 		}
 		if change <= armijo*length*slope {

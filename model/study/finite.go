@@ -43,14 +43,16 @@ func finiteOf(c model.Chain) model.Chain {
 	return c
 }
 
+// relaxing turns the progress of the starts into that of the stage. A start counts
+// by the decades that its residual has fallen; starts that run side by side tell
+// of themselves alone, so the furthest that was told counts.
 func (in *inquiry) relaxing(p relax.Progress) {
-	// a start counts by the decades that its residual has fallen
 	part := 0.0
 	if p.Residual > 0 && p.Residual < 1 {
 		part = min(1, math.Log(p.Residual)/math.Log(p.Tolerance))
 	}
-	in.progress("lattice", min(1, (float64(p.Finished)+part)/float64(p.Starts)),
-		"start %q: residual %.0e of %.0e", p.Start, p.Residual, p.Tolerance)
+	in.furthest = max(in.furthest, min(1, (float64(p.Finished)+part)/float64(p.Starts)))
+	in.progress("lattice", in.furthest, "start %q: residual %.0e of %.0e", p.Start, p.Residual, p.Tolerance)
 }
 
 // measure takes the order parameters off a relaxed lattice.

@@ -71,8 +71,11 @@ func BenchmarkAgainstPlain(b *testing.B) {
 		}
 		return l.FreeEnergy / float64(c.Sites)
 	}
-	for _, n := range []int{200, 400, 1000} {
+	for _, n := range []int{200, 400, 1000, 2000} {
 		b.Run(fmt.Sprintf("bond/%d", n), func(b *testing.B) {
+			if n > 1000 && os.Getenv("TWOKF_LONG") != "1" {
+				b.Skip("the yardstick takes minutes here; TWOKF_LONG=1 does it")
+			}
 			c := model.Chain{Energy: model.UnitEV, Sites: n, Hopping: 2.5, Spin: 2, ByNumber: true, Electrons: n,
 				Bond: model.Phonon{Present: true, Coupling: 4.1, Stiffness: 21}}
 			compare(b, "bond", n, func() float64 { return relaxed(b, c) })

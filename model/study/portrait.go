@@ -41,9 +41,10 @@ type Trouble struct {
 // Progress tells how far a long stage is.
 type Progress struct {
 	Stage   string
-	Done    float64 // 0..1
-	Detail  string  // such as "force 3e-5 of 1e-8"
-	Elapsed time.Duration
+	Done    float64       // 0..1
+	Detail  string        // such as "force 3e-5 of 1e-8"
+	Elapsed time.Duration // since the study began
+	Left    time.Duration // of this stage, if it goes on as it has; 0: not known
 }
 
 // Band is the infinite uniform chain.

@@ -44,6 +44,9 @@ type inquiry struct {
 	started  time.Time
 	solver   fermi.Solver
 	portrait Portrait // filled stage by stage; copied when published
+
+	stageStarted time.Time
+	furthest     float64 // progress of the relaxation
 }
 
 // Run answers every question about chain c. The chain must be valid; if not,
@@ -94,6 +97,7 @@ func (in *inquiry) takeOver() (todo []stage) {
 func (in *inquiry) do(ctx context.Context, st stage) error {
 	err := ctx.Err()
 	if err == nil {
+		in.stageStarted = time.Now()
 		in.progress(st.name, 0, "under way")
 		err = st.run(ctx, in)
 	}
@@ -123,8 +127,15 @@ func (in *inquiry) progress(stage string, done float64, format string, args ...a
 	if in.settings.Progress == nil {
 		return
 	}
-	in.settings.Progress(Progress{Stage: stage, Done: done, Detail: fmt.Sprintf(format, args...), Elapsed: time.Since(in.started)})
+	p := Progress{Stage: stage, Done: done, Detail: fmt.Sprintf(format, args...), Elapsed: time.Since(in.started)}
+	if spent := time.Since(in.stageStarted); done >= enoughDone && done < 1 {
+		p.Left = time.Duration(float64(spent) * (1 - done) / done)
+	}
+	in.settings.Progress(p)
 }
+
+// enoughDone is the part of a stage from which the time left can be told.
+const enoughDone = 0.05
 
 // trouble returns why a stage failed, or nil.
 func (p *Portrait) trouble(stage string) error {
