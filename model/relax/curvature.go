@@ -92,9 +92,7 @@ func (p *problem) waves() [][]float64 {
 			return
 		}
 		d := make([]float64, p.size())
-		for i := range n {
-			d[from+i] = math.Cos(q*float64(i) + phase)
-		}
+		cosines(d[from:from+n], 1, q, phase)
 		p.project(d)
 		before := math.Sqrt(dot(d, d))
 		for _, b := range basis {

@@ -81,34 +81,46 @@ type sower struct {
 }
 
 func (s sower) wave(name string, q, phase, bonds, sites float64) Seed {
-	return s.pattern(name, bonds, sites, func(i float64) float64 { return math.Cos(q*(i-s.middle) + phase) })
+	return s.pattern(name, bonds, sites, func(dst []float64, amplitude float64) {
+		cosines(dst, amplitude, q, phase-q*s.middle)
+	})
 }
 
 // dented is a wave whose amplitude changes sign twice in the middle.
 func (s sower) dented(name string, q float64) Seed {
 	width := dentWidth / seedGap
-	return s.pattern(name, 1, 1, func(i float64) float64 {
-		sech := 1 / math.Cosh((i-s.middle)/width)
-		return math.Cos(q*(i-s.middle)) * (1 - 1.2*sech*sech)
+	return s.pattern(name, 1, 1, func(dst []float64, amplitude float64) {
+		cosines(dst, amplitude, q, -q*s.middle)
+		far := int(20 * width) // beyond it the dent is nothing
+		for i := max(0, int(s.middle)-far); i < min(len(dst), int(s.middle)+far); i++ {
+			sech := 1 / math.Cosh((float64(i)-s.middle)/width)
+			dst[i] *= 1 - 1.2*sech*sech
+		}
 	})
 }
 
 func (s sower) random(name string) Seed {
 	r := rand.New(rand.NewPCG(2, uint64(s.chain.Sites))) // the same chain has the same starts
-	return s.pattern(name, 1, 1, func(float64) float64 { return 2*r.Float64() - 1 })
+	return s.pattern(name, 1, 1, func(dst []float64, amplitude float64) {
+		for i := range dst {
+			dst[i] = amplitude * (2*r.Float64() - 1)
+		}
+	})
 }
 
-func (s sower) pattern(name string, bonds, sites float64, shape func(i float64) float64) Seed {
+func (s sower) pattern(name string, bonds, sites float64, fill func(dst []float64, amplitude float64)) Seed {
 	c, seed := s.chain, Seed{Name: name}
 	if c.Bond.Active() {
 		count := c.Sites
 		if c.Boundary == model.Open {
 			count--
 		}
-		seed.Stretch = fill(count, bonds*seedAmplitude(c, c.Bond)/2, shape)
+		seed.Stretch = make([]float64, count)
+		fill(seed.Stretch, bonds*seedAmplitude(c, c.Bond)/2)
 	}
 	if c.Site.Active() {
-		seed.SiteMode = fill(c.Sites, sites*seedAmplitude(c, c.Site), shape)
+		seed.SiteMode = make([]float64, c.Sites)
+		fill(seed.SiteMode, sites*seedAmplitude(c, c.Site))
 	}
 	return seed
 }
@@ -119,12 +131,4 @@ func (s sower) pattern(name string, bonds, sites float64, shape func(i float64) 
 func seedAmplitude(c model.Chain, p model.Phonon) float64 {
 	own := p.Coupling / p.Stiffness
 	return min(seedGap*max(c.Hopping/p.Coupling, own), float64(c.Spin)*own)
-}
-
-func fill(n int, amplitude float64, shape func(i float64) float64) []float64 {
-	x := make([]float64, n)
-	for i := range x {
-		x[i] = amplitude * shape(float64(i))
-	}
-	return x
 }

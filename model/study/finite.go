@@ -80,13 +80,7 @@ func (in *inquiry) measure(l *relax.Lattice) *Lattice {
 // amplitude returns A_Q[x] = (2/N)·|Σ_j x_j e^(−iQj)|, with (1/N) at Q = π and
 // at Q = 0, where the wave is its own mirror image.
 func amplitude(x []float64, q float64, sites int) float64 {
-	var re, im float64
-	for j, v := range x {
-		s, c := math.Sincos(q * float64(j))
-		re += v * c
-		im -= v * s
-	}
-	a := 2 * math.Hypot(re, im) / float64(sites)
+	a := 2 * relax.Amplitude(x, q) / float64(sites)
 	if math.Abs(math.Sin(q)) < 1e-9 {
 		a /= 2
 	}
