@@ -104,7 +104,8 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 	p := newProblem(c)
 	walkers := []*walker{newWalker(p)}
 	w := walkers[0]
-	if err := w.stand(ctx, make([]float64, p.size())); err != nil {
+	err := w.stand(ctx, make([]float64, p.size()))
+	if err != nil {
 		return nil, err
 	}
 	uniform := w.at("undistorted", 0)
@@ -114,7 +115,9 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 
 	starts := slices.Clone(set.Starts)
 	if starts == nil {
-		starts = Seeds(c)
+		if starts, err = likelySeeds(ctx, c, set); err != nil {
+			return nil, err
+		}
 	}
 	if prev := set.Previous; prev != nil && p.fits(prev) {
 		starts = append([]Seed{{Name: "previous", Stretch: prev.Stretch, SiteMode: prev.SiteMode}}, starts...)

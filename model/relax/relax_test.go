@@ -526,6 +526,23 @@ func TestJobsDoNotMatter(t *testing.T) {
 	}
 }
 
+// TestLongChainsAreScoutedOnShortOnes: on a long chain only the start that wins on
+// a short one is relaxed, and it ends at the short chain's energy per site.
+func TestLongChainsAreScoutedOnShortOnes(t *testing.T) {
+	c := model.Chain{Sites: 20_000, Hopping: 1, Spin: 2, ByNumber: true, Electrons: 10_000,
+		Bond: model.Phonon{Present: true, Coupling: 0.6, Stiffness: 1.2}, Site: model.Phonon{Present: true, Coupling: 0.5, Stiffness: 0.5}}
+	long := relaxed(t, c, Settings{Tolerance: 1e-8})
+	if len(long.Tried) != 1 {
+		t.Errorf("%d starts were relaxed", len(long.Tried))
+	}
+	c.Sites, c.Electrons = 400, 200
+	short := relaxed(t, c, Settings{Tolerance: 1e-8})
+	near(t, "E/N", long.FreeEnergy/20_000, short.FreeEnergy/400, 1e-9)
+	if short.Start != long.Start {
+		t.Errorf("%s wins on 400 sites, %s on 20000", short.Start, long.Start)
+	}
+}
+
 func TestCancel(t *testing.T) {
 	ctx, cancel := context.WithCancel(context.Background())
 	cancel()

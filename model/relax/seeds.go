@@ -1,8 +1,10 @@
 package relax
 
 import (
+	"context"
 	"math"
 	"math/rand/v2"
+	"slices"
 
 	"example.org/twokf/model"
 )
@@ -56,6 +58,55 @@ func Seeds(c model.Chain) []Seed {
 	}
 	return seeds
 }
+
+const (
+	// longestUnscouted is the longest chain on which every seed is relaxed; of
+	// longer ones the seeds are first compared on a chain of about scoutSites.
+	longestUnscouted = 16_000
+	scoutSites       = 1000
+)
+
+// likelySeeds returns the starts that are worth the while. On a long chain that is
+// the one that wins on a shorter chain of the same filling: what a chain of a
+// thousand sites prefers, by some energy per site, so does a longer one.
+func likelySeeds(ctx context.Context, c model.Chain, set Settings) ([]Seed, error) {
+	if c.Sites <= longestUnscouted {
+		return Seeds(c), nil
+	}
+	all := Seeds(c)
+	short := shorter(c)
+	candidates := slices.DeleteFunc(Seeds(short), func(s Seed) bool { return !slices.ContainsFunc(all, s.like) })
+	l, err := Run(ctx, short, Settings{Starts: candidates, Tolerance: set.Tolerance, MaxIterations: set.MaxIterations, Jobs: set.Jobs})
+	if err != nil {
+		return nil, err
+	}
+	for i, s := range all {
+		if s.Name == l.Start {
+			return []Seed{all[i]}, nil
+		}
+	}
+	return all, nil // it stayed undistorted, or left a saddle: no seed is better than another
+}
+
+// shorter returns a chain of about scoutSites that comes closest to c's number
+// of electrons for each site and spin.
+func shorter(c model.Chain) model.Chain {
+	n, _ := c.Count()
+	filling := float64(n) / float64(c.Spin*c.Sites)
+	best, least := scoutSites, math.Inf(1)
+	for sites := scoutSites; sites < 2*scoutSites; sites++ {
+		want := filling * float64(sites)
+		if off := math.Abs(want - math.Round(want)); sites%2 == c.Sites%2 && off < least-1e-9 {
+			best, least = sites, off
+		}
+	}
+	c.ByNumber, c.Filling = true, 0
+	c.Sites, c.Electrons = best, c.Spin*int(math.Round(filling*float64(best)))
+	return c
+}
+
+// like reports whether two seeds are the same idea.
+func (s Seed) like(other Seed) bool { return s.Name == other.Name }
 
 // commensurate returns the wave vector 2πp/m, m ≤ largestPeriod, nearest to q.
 func commensurate(q float64) float64 {
