@@ -66,6 +66,9 @@ func (w *waves) solve(h *Hamiltonian, occ Occupation, st *State) {
 	for i := range st.BondOrder {
 		st.BondOrder[i] = spin * bond / size
 	}
+	if n > longestHot {
+		*w = waves{} // a third of what a sweep takes, for one use
+	}
 }
 
 // fill stores the levels, ascending, and their cos k.

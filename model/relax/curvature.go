@@ -22,6 +22,7 @@ const (
 func (w *walker) testCurvature(ctx context.Context, e *end) error {
 	e.curvature, e.downhill = 1, nil
 	w.solver.Forget()
+	w.release()
 	basis := w.waves()
 	k := len(basis)
 	if k == 0 {
@@ -32,7 +33,7 @@ func (w *walker) testCurvature(ctx context.Context, e *end) error {
 	for j, d := range basis {
 		eps := w.reach(d, probe)
 		for sign := 1.0; sign >= -1; sign -= 2 {
-			copy(w.x, e.x)
+			w.goTo(e)
 			addScaled(w.x, sign*eps, d)
 			if err := w.evaluate(ctx); err != nil {
 				return err
@@ -55,7 +56,7 @@ func (w *walker) testCurvature(ctx context.Context, e *end) error {
 	e.curvature = eig.Values(nil)[0]
 	var vectors mat.Dense
 	eig.VectorsTo(&vectors)
-	e.downhill = make([]float64, len(e.x))
+	e.downhill = make([]float64, w.size())
 	for i, d := range basis {
 		addScaled(e.downhill, vectors.At(i, 0), d)
 	}
@@ -64,13 +65,21 @@ func (w *walker) testCurvature(ctx context.Context, e *end) error {
 
 // offSaddle walks down the direction that testCurvature found.
 func (w *walker) offSaddle(ctx context.Context, e *end, set Settings) (*end, error) {
-	x := append([]float64(nil), e.x...)
-	addScaled(x, w.reach(e.downhill, push), e.downhill)
-	if err := w.stand(ctx, x); err != nil {
+	w.goTo(e)
+	addScaled(w.x, w.reach(e.downhill, push), e.downhill)
+	if err := w.stand(ctx, w.x); err != nil {
 		return nil, err
 	}
 	n, err := w.minimise(ctx, set.Tolerance, set.MaxIterations, nil)
 	return w.at(e.name+", off a saddle", n), err
+}
+
+// goTo puts the coordinates where an end lies.
+func (w *walker) goTo(e *end) {
+	if e.x == nil {
+		clear(w.x)
+	}
+	copy(w.x, e.x)
 }
 
 // reach returns the multiple of d that changes its largest matrix element by

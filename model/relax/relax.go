@@ -104,11 +104,12 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 	p := newProblem(c)
 	walkers := []*walker{newWalker(p)}
 	w := walkers[0]
-	err := w.stand(ctx, make([]float64, p.size()))
+	err := w.stand(ctx, nil)
 	if err != nil {
 		return nil, err
 	}
 	uniform := w.at("undistorted", 0)
+	uniform.x = nil
 	if p.size() == 0 {
 		return w.lattice(ctx, uniform, uniform, set.Tolerance)
 	}
@@ -186,6 +187,7 @@ func (p *problem) fits(l *Lattice) bool {
 // hands out what it finds; the walker is of no use after that.
 func (w *walker) lattice(ctx context.Context, e, undistorted *end, tolerance float64) (*Lattice, error) {
 	w.solver.RoughEdges = false
+	w.release()
 	if err := w.stand(ctx, e.x); err != nil {
 		return nil, err
 	}
@@ -201,7 +203,7 @@ func (w *walker) lattice(ctx context.Context, e, undistorted *end, tolerance flo
 		Curvature:     e.curvature,
 		Start:         e.name,
 	}
-	l.Stretch, l.SiteMode = w.patterns(e.x)
+	l.Stretch, l.SiteMode = w.patterns(w.x)
 	if l.Stretch != nil {
 		l.Displacement = displacement(l.Stretch, w.sites)
 	}

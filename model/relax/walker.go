@@ -45,7 +45,7 @@ type step struct {
 // end is where a start has led so far.
 type end struct {
 	name       string
-	x          []float64
+	x          []float64 // nil: undistorted, or let go of
 	free       float64
 	residual   float64
 	iterations int
@@ -61,12 +61,16 @@ func newWalker(p *problem) *walker {
 	}
 }
 
-// stand puts the walker at x, which it does not keep, knowing nothing of where
-// it was before: what it finds there depends on x alone.
+// stand puts the walker at x (nil: the undistorted chain), which it does not
+// keep, knowing nothing of where it was before: what it finds there depends on x
+// alone.
 func (w *walker) stand(ctx context.Context, x []float64) error {
 	w.solver.Forget()
 	w.spare = append(w.spare, w.steps...)
 	w.steps = w.steps[:0]
+	if x == nil {
+		clear(w.x)
+	}
 	copy(w.x, x)
 	return w.evaluate(ctx)
 }
@@ -224,6 +228,13 @@ func (w *walker) remember() {
 	}
 	st.rho = 1 / sy
 	w.steps = append(w.steps, st)
+}
+
+// release gives back what only minimise needs, where it is long.
+func (w *walker) release() {
+	if len(w.x) > manyCoordinates {
+		w.steps, w.spare, w.direction, w.fromX, w.fromG = nil, nil, nil, nil, nil
+	}
 }
 
 // forget empties the memory.
