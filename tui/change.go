@@ -33,8 +33,11 @@ func (b *Bench) show(w work) tea.Cmd {
 		b.drafts.keep(before) // a later change will be of the other chain
 	}
 	b.work = w
-	if w.chain.Sites != before.chain.Sites {
+	switch {
+	case w.origin != before.origin:
 		b.sites = window{}
+	case w.chain.Sites != before.chain.Sites && b.sites.width() > 0:
+		b.setWindow(b.sites.from, b.sites.width())
 	}
 	b.choose(0)
 	if w.chain == before.chain {

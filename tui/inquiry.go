@@ -164,7 +164,7 @@ func (q *inquiry) onSlow(m slowMsg) {
 // parts are older than the knobs.
 type picture struct {
 	study.Portrait
-	stale struct{ band, response, phonon, lattice, levels, doubts bool }
+	stale struct{ band, response, ring, phonon, lattice, levels, doubts bool }
 }
 
 // picture merges the present study's parts with the last one's. Energies in
@@ -188,6 +188,9 @@ func (q *inquiry) picture() picture {
 	}
 	if p.Response == nil {
 		p.Response, p.stale.response = old.Response, true
+	}
+	if p.Ring == nil && p.Chain.Boundary == model.Ring {
+		p.Ring, p.stale.ring = old.Ring, true
 	}
 	if p.Phonon == nil {
 		p.Phonon, p.stale.phonon = old.Phonon, true

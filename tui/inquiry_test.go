@@ -24,9 +24,12 @@ type watched struct {
 }
 
 func (w watched) Update(msg tea.Msg) (tea.Model, tea.Cmd) {
-	if look, ok := msg.(func(*Bench)); ok {
-		look(w.Bench)
+	switch do := msg.(type) {
+	case func(*Bench):
+		do(w.Bench)
 		return w, nil
+	case func(*Bench) tea.Cmd:
+		return w, do(w.Bench)
 	}
 	_, cmd := w.Bench.Update(msg)
 	if w.each != nil {
@@ -178,6 +181,30 @@ func TestProgressShowsOnlyAfterPatience(t *testing.T) {
 		})
 		leave(p, over)
 	})
+}
+
+func TestALongWaitSaysWhenItEnds(t *testing.T) {
+	b := opened(t, "half", 80, 24)
+	answer(t, b)
+	press(t, b, "up")
+	b.Update(slowMsg{b.inquiry.lag})
+	for _, tt := range []struct {
+		left time.Duration
+		want string
+	}{
+		{0, "lattice 50 %, on its way"},
+		{2*time.Second - 1, "lattice 50 %, on its way"},
+		{2 * time.Second, "lattice 50 %, about 2 s left, on its way"},
+		{12400 * time.Millisecond, "lattice 50 %, about 12 s left"},
+		{89 * time.Second, "lattice 50 %, about 89 s left"},
+		{150 * time.Second, "lattice 50 %, about 2 min left"},
+		{3 * time.Hour, "lattice 50 %, about 3 h left"},
+	} {
+		stage := study.Progress{Stage: "lattice", Done: 0.5, Detail: "on its way", Left: tt.left}
+		b.Update(updateMsg{gen: b.inquiry.gen, news: update{progress: &stage}})
+		headline, _, _ := strings.Cut(b.View(), "\n")
+		demand(t, headline, tt.want)
+	}
 }
 
 // A held key asks for ever new studies; the picture lags all the while.

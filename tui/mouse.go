@@ -1,10 +1,6 @@
 package tui
 
-import (
-	tea "github.com/charmbracelet/bubbletea"
-
-	"example.org/twokf/tui/plot"
-)
+import tea "github.com/charmbracelet/bubbletea"
 
 // mouseHelp stands below the key list.
 const mouseHelp = "mouse: a click on a knob chooses it, on a plot reads it there; the wheel turns the knob under it, or the chosen one"
@@ -77,8 +73,8 @@ func (b *Bench) point(col, row int) {
 			b.reading.on = false
 			return
 		}
-		if xs := views[p.view].abscissae(b.scene(p.view)); len(xs) > 0 {
-			b.reading = reading{on: true, view: p.view, x: xs[plot.Nearest(xs, x)]}
+		if x, ok = views[p.view].place(b.scene(p.view), x, 0); ok {
+			b.reading = reading{on: true, view: p.view, x: x}
 		}
 	}
 }

@@ -3,6 +3,7 @@ package tui
 import (
 	"strings"
 
+	"example.org/twokf/model"
 	"example.org/twokf/tui/plot"
 )
 
@@ -23,32 +24,33 @@ type drawing struct {
 
 type drawingKey struct {
 	panel     panel
-	parts     [7]any // pointers to the picture's parts
+	parts     [3]any // pointers to the picture's parts that the view shows
 	stale     bool
 	ascii     bool
 	large     bool
 	staggered bool
 	sites     window
 	reading   reading
-	chain     phononNames
+	chain     chainKind
 }
 
-// phononNames is what headings take from the chain.
-type phononNames struct {
+// chainKind is what views take from the chain itself.
+type chainKind struct {
 	energy     int
+	ring       bool
 	bond, site bool
 	fb, fs     bool
 }
 
 // plotRows draws the plots into the given rows of the screen: all four, two by
 // two, or the one that has the whole screen.
-func (b *Bench) plotRows(pic *picture, top, h int) []string {
+func (b *Bench) plotRows(top, h int) []string {
 	if h < 1 {
 		return nil
 	}
 	if b.large >= 0 {
 		b.screen.panels = append(b.screen.panels, panel{b.large, 0, top, b.w, h})
-		return b.draw(pic, 0)
+		return b.draw(0)
 	}
 	left := (b.w - gap) / 2
 	right := b.w - gap - left
@@ -57,8 +59,8 @@ func (b *Bench) plotRows(pic *picture, top, h int) []string {
 	b.screen.panels = append(b.screen.panels,
 		panel{0, 0, top, left, upper}, panel{1, left + gap, top, right, upper},
 		panel{2, 0, top + upper, left, lower}, panel{3, left + gap, top + upper, right, lower})
-	rows := beside(b.draw(pic, 0), b.draw(pic, 1))
-	return append(rows, beside(b.draw(pic, 2), b.draw(pic, 3))...)
+	rows := beside(b.draw(0), b.draw(1))
+	return append(rows, beside(b.draw(2), b.draw(3))...)
 }
 
 // beside sets two blocks of equal height side by side; the rows of the left one
@@ -82,7 +84,12 @@ func (b *Bench) picture() picture {
 
 // scene gathers what a view may look at.
 func (b *Bench) scene(view int) *scene {
-	s := &scene{picture: b.picture(), large: b.large >= 0, staggered: b.isStaggered(), sites: b.sites}
+	s := &scene{picture: b.picture(), large: b.large >= 0, staggered: b.isStaggered(), sites: b.sites, sketch: &b.screen.sketch}
+	for i, p := range b.screen.panels {
+		if p.view == view && i < len(b.screen.canvas) {
+			s.columns, _ = b.screen.canvas[i].Dots()
+		}
+	}
 	s.reads = b.reading.on && b.reading.view == view
 	s.reading = b.reading.x
 	return s
@@ -90,19 +97,19 @@ func (b *Bench) scene(view int) *scene {
 
 // draw returns the rows of the i-th panel, drawn anew only if what it depends
 // on has changed.
-func (b *Bench) draw(pic *picture, i int) []string {
+func (b *Bench) draw(i int) []string {
 	for len(b.screen.drawn) <= i {
 		b.screen.drawn = append(b.screen.drawn, drawing{})
 		b.screen.canvas = append(b.screen.canvas, new(plot.Canvas))
 	}
 	p := b.screen.panels[i]
-	v := views[p.view]
-	c := pic.Chain
+	v, s := views[p.view], b.scene(p.view)
+	c := &s.Chain
 	key := drawingKey{
-		panel: p, stale: b.inquiry.lags() && v.stale(pic), ascii: b.ascii, large: b.large >= 0,
-		staggered: b.isStaggered(), sites: b.sites,
-		parts: [7]any{pic.Band, pic.Response, pic.Ring, pic.Phonon, pic.Lattice, pic.Levels, pic.Transition},
-		chain: phononNames{int(c.Energy), c.Bond.Present, c.Site.Present, c.Bond.Frequency > 0, c.Site.Frequency > 0},
+		panel: p, stale: b.inquiry.lags() && v.stale(s), ascii: b.ascii, large: s.large,
+		staggered: s.staggered, sites: s.sites,
+		parts: v.parts(s),
+		chain: chainKind{int(c.Energy), c.Boundary == model.Ring, c.Bond.Present, c.Site.Present, c.Bond.Frequency > 0, c.Site.Frequency > 0},
 	}
 	if b.reading.on && b.reading.view == p.view {
 		key.reading = b.reading
@@ -118,7 +125,6 @@ func (b *Bench) draw(pic *picture, i int) []string {
 	canvas := b.screen.canvas[i]
 	canvas.Stale, canvas.Trim = key.stale, p.col+p.w == b.w
 	canvas.Reset(p.w, p.h, charset)
-	s := b.scene(p.view)
 	s.spell = b.spell
 	s.plot(canvas, v)
 	d.key, d.rows = key, make([]string, p.h)

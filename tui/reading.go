@@ -1,10 +1,6 @@
 package tui
 
-import (
-	tea "github.com/charmbracelet/bubbletea"
-
-	"example.org/twokf/tui/plot"
-)
+import tea "github.com/charmbracelet/bubbletea"
 
 // reading is where a plot is read.
 type reading struct {
@@ -31,32 +27,23 @@ func (b *Bench) readNext() tea.Cmd {
 			return nil
 		}
 	}
-	x := views[view].abscissae(b.scene(view))
-	if len(x) == 0 {
+	v, s := views[view], b.scene(view)
+	x, ok := v.place(s, v.begin(s), 0)
+	if !ok {
 		b.say("there is nothing to read yet")
 		return nil
 	}
-	at := len(x) / 2
-	if band := b.picture().Band; band != nil {
-		switch view {
-		case bandIndex:
-			at = plot.Nearest(x, band.KF)
-		case chiIndex, phononIndex:
-			at = plot.Nearest(x, band.Ordering)
-		}
-	}
-	b.reading = reading{on: true, view: view, x: x[at]}
+	b.reading = reading{on: true, view: view, x: x}
 	return nil
 }
 
-// readMove reads so many points further.
+// readMove reads so many places further.
 func (b *Bench) readMove(by int) tea.Cmd {
 	if !b.reading.on || b.large >= 0 && b.reading.view != b.large {
 		return b.readNext()
 	}
-	x := views[b.reading.view].abscissae(b.scene(b.reading.view))
-	if len(x) > 0 {
-		b.reading.x = x[min(max(plot.Nearest(x, b.reading.x)+by, 0), len(x)-1)]
+	if x, ok := views[b.reading.view].place(b.scene(b.reading.view), b.reading.x, by); ok {
+		b.reading.x = x
 	}
 	return nil
 }

@@ -90,7 +90,7 @@ func (b *Bench) readoutRows(width, most int) []string {
 			line, used = "", 0
 		}
 		if used > 0 {
-			line, used = line+b.look.paint(inkAxis, b.spell(" · ")), used+3
+			line, used = line+b.spell(" · "), used+3 // in no ink of its own, which each would cost
 		}
 		line, used = line+text, used+w
 	}

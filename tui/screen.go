@@ -3,6 +3,7 @@ package tui
 import (
 	"fmt"
 	"strings"
+	"time"
 
 	"github.com/charmbracelet/x/ansi"
 
@@ -22,6 +23,7 @@ type screen struct {
 	spots  []spot  // knobs on the screen
 	canvas []*plot.Canvas
 	drawn  []drawing
+	sketch sketch
 }
 
 // spot is a knob's place on the screen.
@@ -83,7 +85,7 @@ func (b *Bench) benchRows() []string {
 	pic := b.picture()
 	knobRows := b.knobRows(b.w)
 	readout, doubts := b.textRows()
-	plots := b.plotRows(&pic, 1, b.h-2-len(knobRows)-readout-doubts)
+	plots := b.plotRows(1, b.h-2-len(knobRows)-readout-doubts)
 	for i := range b.screen.spots {
 		b.screen.spots[i].row += 1 + len(plots)
 	}
@@ -110,7 +112,7 @@ func (b *Bench) headline() string {
 	case q.err != nil:
 		right = "not computed"
 	case q.slow && q.stage.Stage != "":
-		right = fmt.Sprintf("%s %2.0f %%, %s", q.stage.Stage, 100*q.stage.Done, q.stage.Detail)
+		right = fmt.Sprintf("%s %2.0f %%, %s%s", q.stage.Stage, 100*q.stage.Done, timeLeft(q.stage.Left), q.stage.Detail)
 	case q.slow:
 		right = "working"
 	}
@@ -118,6 +120,23 @@ func (b *Bench) headline() string {
 	left := ansi.Truncate(b.spell(b.title()), max(0, b.w-ansi.StringWidth(right)-2), b.spell("…"))
 	fill := max(1, b.w-ansi.StringWidth(left)-ansi.StringWidth(right))
 	return b.look.paint(inkHeading, left) + strings.Repeat(" ", fill) + b.look.paint(inkMark, right)
+}
+
+// worthSaying is how long a wait must be for its end to be foretold.
+const worthSaying = 2 * time.Second
+
+// timeLeft says about how long something will take; nothing if that is not
+// known or soon over.
+func timeLeft(d time.Duration) string {
+	switch {
+	case d < worthSaying:
+		return ""
+	case d < 90*time.Second:
+		return fmt.Sprintf("about %.0f s left, ", d.Seconds())
+	case d < 90*time.Minute:
+		return fmt.Sprintf("about %.0f min left, ", d.Minutes())
+	}
+	return fmt.Sprintf("about %.0f h left, ", d.Hours())
 }
 
 // footer is the prompt, or what there is to say.

@@ -17,13 +17,22 @@ func (bandView) name() string { return "bands" }
 
 func (bandView) title(s *scene) string { return "energy (" + s.Chain.Energy.String() + ") against k" }
 
-func (bandView) stale(p *picture) bool { return p.stale.band || p.stale.levels }
+func (bandView) stale(s *scene) bool { return s.stale.band || s.stale.levels }
 
-func (bandView) abscissae(s *scene) []float64 {
+func (bandView) parts(s *scene) [3]any { return [3]any{s.Band, s.Levels, s.Lattice} }
+
+func (bandView) begin(s *scene) float64 {
 	if s.Band == nil {
-		return nil
+		return math.Pi / 2
 	}
-	return s.Band.K
+	return s.Band.KF
+}
+
+func (bandView) place(s *scene, x float64, by int) (float64, bool) {
+	if s.Band == nil {
+		return 0, false
+	}
+	return among(s.Band.K, x, by)
 }
 
 func (bandView) draw(c *plot.Canvas, s *scene) {

@@ -6,120 +6,112 @@ import (
 
 	"example.org/twokf/model"
 	"example.org/twokf/model/report"
+	"example.org/twokf/model/study"
 	"example.org/twokf/tui/plot"
 )
 
 // chainView shows the lattice pattern of the relaxed chain site by site and,
 // behind it, the density (or, where that is flat, the bond order), scaled to
-// the same height with its range in the legend.
+// the same height with its range in the legend. Where many sites share a column
+// of dots it shows the lowest and the highest of them.
 type chainView struct{}
 
 func (chainView) name() string { return "density and lattice" }
 
-func (chainView) stale(p *picture) bool { return p.stale.lattice }
+func (chainView) stale(s *scene) bool { return s.stale.lattice }
+
+func (chainView) parts(s *scene) [3]any { return [3]any{s.Lattice} }
 
 // flatDensity is the modulation below which the density is not worth a curve.
 const flatDensity = 1e-6
 
-func (chainView) abscissae(s *scene) []float64 {
-	if s.Lattice == nil {
-		return nil
-	}
-	return places(s.window())
+// sketch is what the chain's view keeps between drawings: memory, and what only
+// a walk along the whole chain can tell.
+type sketch struct {
+	lattice   *study.Lattice
+	staggered bool
+	flat      bool       // the density is not worth a curve
+	density   [2]float64 // its range
+	most      float64    // largest lattice coordinate, either way
+
+	x, y     []float64
+	envelope envelope
 }
 
-// window returns the sites that are shown.
-func (s *scene) window() (from, to int) {
+// survey walks along the chain once for each lattice.
+func (s *scene) survey() *sketch {
+	k := s.sketch
+	if k.lattice == s.Lattice && k.staggered == s.staggered {
+		return k
+	}
+	k.lattice, k.staggered, k.most = s.Lattice, s.staggered, 0
+	n := strand{values: s.Lattice.Electrons.Density}
+	lo, hi := n.extent(0, len(n.values))
+	k.density, k.flat = [2]float64{lo, hi}, hi-lo < flatDensity
+	for _, p := range s.patterns() {
+		lo, hi := p.extent(0, len(p.values))
+		k.most = max(k.most, hi, -lo)
+	}
+	return k
+}
+
+// window returns the sites that are shown, and how they share the plot.
+func (s *scene) window() columns {
 	n := len(s.Lattice.Electrons.Density)
-	if s.sites.width() == 0 || s.sites.to > n {
-		return 0, n
+	w := s.sites
+	if w.width() == 0 || w.to > n {
+		w = window{0, n}
 	}
-	return s.sites.from, s.sites.to
+	return columns{w, s.columns}
 }
 
-func places(from, to int) []float64 {
-	x := make([]float64, to-from)
-	for i := range x {
-		x[i] = float64(from + i)
-	}
-	return x
-}
-
-// pattern is one lattice coordinate along the chain.
-type pattern struct {
-	name, unit string
-	values     []float64
-}
-
-func (s *scene) patterns() []pattern {
-	var out []pattern
+// patterns returns the lattice coordinates.
+func (s *scene) patterns() []strand {
+	var out []strand
 	unit := ""
 	if s.Chain.Energy == model.UnitEV {
 		unit = "Å"
 	}
-	if s.Lattice.Displacement != nil {
-		out = append(out, pattern{"u", unit, s.Lattice.Displacement})
-	}
-	if s.Lattice.SiteMode != nil {
-		out = append(out, pattern{"q", "", s.Lattice.SiteMode})
-	}
+	pattern := strand{ring: s.Chain.Boundary == model.Ring}
+	sign := ""
 	if s.staggered {
-		for i, p := range out {
-			out[i].values = stagger(p.values, s.Chain.Boundary == model.Ring)
-			out[i].name = "(−1)ⁱ" + p.name
-		}
+		pattern.filter, sign = amplitude, "(−1)ⁱ"
+	}
+	if pattern.values = s.Lattice.Displacement; pattern.values != nil {
+		pattern.name, pattern.unit = sign+"u", unit
+		out = append(out, pattern)
+	}
+	if pattern.values = s.Lattice.SiteMode; pattern.values != nil {
+		pattern.name, pattern.unit = sign+"q", ""
+		out = append(out, pattern)
 	}
 	return out
 }
 
-// stagger returns (−1)^i (2x_i − x_{i−1} − x_{i+1})/4, the amplitude of a
-// period-2 pattern with its sign: a kink is where it changes.
-func stagger(x []float64, ring bool) []float64 {
-	out := make([]float64, len(x))
-	for i, v := range x {
-		l, r := neighbours(x, i, ring)
-		out[i] = (2*v - l - r) / 4
-		if i%2 == 1 {
-			out[i] = -out[i]
-		}
+// density returns the electrons' pattern that is worth showing: without its fast
+// oscillation where the lattice is shown without it.
+func (s *scene) density() strand {
+	e := &s.Lattice.Electrons
+	switch {
+	case s.staggered && (s.Lattice.Displacement != nil || s.Lattice.SiteMode != nil):
+		return strand{name: "n", values: e.Density, ring: s.Chain.Boundary == model.Ring, filter: smooth}
+	case s.survey().flat && s.Lattice.Displacement != nil:
+		return strand{name: "p", values: e.BondOrder}
 	}
-	return out
-}
-
-// smooth returns (x_{i−1} + 2x_i + x_{i+1})/4: a period-2 pattern averages out.
-func smooth(x []float64, ring bool) []float64 {
-	out := make([]float64, len(x))
-	for i, v := range x {
-		l, r := neighbours(x, i, ring)
-		out[i] = (l + 2*v + r) / 4
-	}
-	return out
-}
-
-// neighbours of site i; at an open end the missing one is its mirror image.
-func neighbours(x []float64, i int, ring bool) (left, right float64) {
-	n := len(x)
-	l, r := i-1, i+1
-	if ring {
-		l, r = (l+n)%n, r%n
-	} else if l < 0 {
-		l = min(1, n-1)
-	} else if r == n {
-		r = max(n-2, 0)
-	}
-	return x[l], x[r]
+	return strand{name: "n", values: e.Density}
 }
 
 func (v chainView) title(s *scene) string {
 	if s.Lattice == nil {
 		return v.name()
 	}
-	_, name := s.density()
+	density := s.density()
+	name := map[string]string{"n": "density n", "p": "bond order p"}[density.name]
 	patterns := s.patterns()
 	if len(patterns) == 0 {
 		return name + " along the chain"
 	}
-	if s.staggered {
+	if density.filter == smooth {
 		name = "smooth n"
 	}
 	what := "lattice "
@@ -133,110 +125,186 @@ func (v chainView) title(s *scene) string {
 	return what + name
 }
 
-// density returns the electrons' pattern that is worth showing, and its name.
-func (s *scene) density() (values []float64, name string) {
-	e := &s.Lattice.Electrons
-	if lo, hi, _ := span(0, e.Density); hi-lo < flatDensity && s.Lattice.Displacement != nil {
-		return e.BondOrder, "bond order p"
-	}
-	return e.Density, "density n"
-}
-
 func (v chainView) draw(c *plot.Canvas, s *scene) {
 	if s.Lattice == nil {
 		return
 	}
-	from, to := s.window()
+	w, k := s.window(), s.survey()
+	sites := plot.Axis{Min: float64(w.from), Max: float64(max(w.to-1, w.from+1)), Whole: true, Name: "site"}
 	patterns := s.patterns()
-	sites := plot.Axis{Min: float64(from), Max: float64(max(to-1, from+1)), Name: "site"}
 	if len(patterns) == 0 {
-		density, _ := s.density()
-		lo, hi, _ := span(0.06, density)
-		c.Frame(sites, plot.Axis{Min: lo, Max: hi}, inkAxis)
+		pad := 0.06 * (k.density[1] - k.density[0])
+		low := k.density[0] - pad
+		c.Frame(sites, plot.Axis{Min: low, Max: k.density[1] + pad}, inkAxis)
 		s.markReading(c)
-		c.Stems(places(from, to), density[from:to], lo, inkDensity, plot.Dotted)
+		if w.count, _ = c.Dots(); w.count > 0 {
+			v.drawDensity(c, s, w, low, 0)
+		}
 		return
 	}
-	most := 0.0
-	for _, p := range patterns {
-		lo, hi, _ := span(0, p.values)
-		most = max(most, 1.1*hi, -1.1*lo)
-	}
+	most := 1.1 * k.most
 	if most < 1e-9 { // an undistorted chain: do not blow up the rounding
 		most = 1
 	}
 	c.Frame(sites, plot.Axis{Min: -most, Max: most}, inkAxis)
 	s.markReading(c)
-	columns, _ := c.Size()
-	dense := to-from > columns // lines between the sites would fill the plot
-	v.drawDensity(c, s, 0.9*most, dense)
-	v.drawPatterns(c, s, patterns, dense)
-}
-
-// drawDensity draws the density, or what stands for it, behind the lattice.
-func (chainView) drawDensity(c *plot.Canvas, s *scene, height float64, dense bool) {
-	from, to := s.window()
-	if s.staggered { // both without their fast oscillation
-		scaled, label := fitInto(smooth(s.Lattice.Electrons.Density, s.Chain.Boundary == model.Ring)[from:to], height)
-		c.Line(places(from, to), scaled, inkDensity, plot.Dotted)
-		s.label(c, "n "+label)
+	if w.count, _ = c.Dots(); w.count == 0 {
 		return
 	}
-	density, name := s.density()
-	to = min(to, len(density)) // an open chain has a bond less than sites
-	scaled, label := fitInto(density[from:to], height)
-	if dense {
-		c.Points(places(from, to), scaled, inkDensity, plot.Dotted)
-	} else {
-		c.Stems(places(from, to), scaled, 0, inkDensity, plot.Dotted)
+	v.drawDensity(c, s, w, 0, 0.9*most)
+	for i := range patterns {
+		v.drawPattern(c, s, w, &patterns[i], i)
 	}
-	s.label(c, name[len(name)-1:]+" "+label)
 }
 
-func (chainView) drawPatterns(c *plot.Canvas, s *scene, patterns []pattern, dense bool) {
-	from, to := s.window()
-	x := places(from, to)
-	for i, p := range patterns {
-		y, ink := p.values[from:to], []plot.Ink{inkFinite, inkBare}[i]
-		switch {
-		case dense && !s.staggered:
-			c.Points(x, y, ink, []plot.Pattern{plot.Heavy, plot.Dashed}[i])
-		case !s.staggered:
-			c.Points(x, y, ink, plot.Heavy)
-			fallthrough
-		default: // an amplitude varies slowly and needs no points
-			c.Line(x, y, ink, []plot.Pattern{plot.Solid, plot.Dashed}[i])
+// siteBySite returns the strand at the sites of the window.
+func (k *sketch) siteBySite(t *strand, w columns) (x, y []float64) {
+	to := min(w.to, len(t.values)) // an open chain has a bond less than sites
+	k.x = k.x[:0]
+	for i := w.from; i < to; i++ {
+		k.x = append(k.x, float64(i))
+	}
+	k.y = t.append(k.y[:0], w.from, to)
+	return k.x, k.y
+}
+
+// crowded reports whether lines between the sites would fill the plot.
+func crowded(c *plot.Canvas, w columns) bool {
+	cells, _ := c.Size()
+	return w.width() > cells
+}
+
+// drawDensity draws the density, or what stands for it: behind the lattice,
+// scaled to ±height, or by itself (height 0) above the base.
+func (chainView) drawDensity(c *plot.Canvas, s *scene, w columns, base, height float64) {
+	t, k := s.density(), s.sketch
+	if w.wide() {
+		e := &k.envelope
+		e.of(&t, w)
+		label := fit(height, e.lo, e.hi)
+		c.Line(e.x, e.lo, inkDensity, plot.Dotted)
+		c.Line(e.x, e.hi, inkDensity, plot.Dotted)
+		s.labelDensity(c, &t, height, label)
+		return
+	}
+	x, y := k.siteBySite(&t, w)
+	label := fit(height, y)
+	switch {
+	case t.filter == smooth:
+		c.Line(x, y, inkDensity, plot.Dotted)
+	case height > 0 && crowded(c, w):
+		c.Points(x, y, inkDensity, plot.Dotted)
+	default:
+		c.Stems(x, y, base, inkDensity, plot.Dotted)
+	}
+	s.labelDensity(c, &t, height, label)
+}
+
+func (s *scene) labelDensity(c *plot.Canvas, t *strand, height float64, label string) {
+	if height > 0 {
+		s.label(c, t.name+" "+label)
+	}
+}
+
+func (chainView) drawPattern(c *plot.Canvas, s *scene, w columns, t *strand, i int) {
+	ink, line := []plot.Ink{inkFinite, inkBare}[i], []plot.Pattern{plot.Solid, plot.Dashed}[i]
+	if w.wide() {
+		e := &s.sketch.envelope
+		e.of(t, w)
+		c.Line(e.x, e.lo, ink, line)
+		c.Line(e.x, e.hi, ink, line)
+		s.label(c, t.name)
+		return
+	}
+	x, y := s.sketch.siteBySite(t, w)
+	switch {
+	case t.filter == amplitude: // varies slowly and needs no points
+		c.Line(x, y, ink, line)
+	case crowded(c, w):
+		c.Points(x, y, ink, []plot.Pattern{plot.Heavy, plot.Dashed}[i])
+	default:
+		c.Points(x, y, ink, plot.Heavy)
+		c.Line(x, y, ink, line)
+	}
+	s.label(c, t.name)
+}
+
+// fit scales values in place about the middle of their range to ±height, unless
+// that is 0, and says what that range is; a flat line lies at 0.
+func fit(height float64, values ...[]float64) (label string) {
+	lo, hi, _ := span(0, values...)
+	middle, half := (lo+hi)/2, (hi-lo)/2
+	flat := hi-lo < flatDensity
+	for _, x := range values {
+		for i := range x {
+			switch {
+			case height == 0:
+			case flat:
+				x[i] = 0
+			default:
+				x[i] = (x[i] - middle) / half * height
+			}
 		}
-		s.label(c, p.name)
 	}
+	if flat {
+		return report.Digits(middle, 1e-6, 4)
+	}
+	return report.Digits(lo, 1e-4, 3) + "…" + report.Digits(hi, 1e-4, 3)
 }
 
-// fitInto scales values about the middle of their range to ±height and says
-// what that range is; a flat line lies at 0.
-func fitInto(values []float64, height float64) (scaled []float64, label string) {
-	lo, hi, _ := span(0, values)
-	scaled = make([]float64, len(values))
-	if hi-lo < flatDensity {
-		return scaled, report.Digits((lo+hi)/2, 1e-6, 4)
+func (chainView) begin(s *scene) float64 {
+	if s.Lattice == nil {
+		return 0
 	}
-	for i, v := range values {
-		scaled[i] = (v - (lo+hi)/2) / ((hi - lo) / 2) * height
-	}
-	return scaled, report.Digits(lo, 1e-4, 3) + "…" + report.Digits(hi, 1e-4, 3)
+	w := s.window()
+	return float64(w.from + w.width()/2)
 }
 
+// place goes from site to site, or from one column of dots to the next where
+// many sites share it.
+func (chainView) place(s *scene, x float64, by int) (float64, bool) {
+	if s.Lattice == nil {
+		return 0, false
+	}
+	w := s.window()
+	if w.wide() {
+		column := min(max(w.of(x)+by, 0), w.count-1)
+		return math.Round(float64(w.from) + float64(column)*w.step()), true
+	}
+	return float64(min(max(int(math.Round(x))+by, w.from), w.to-1)), true
+}
+
+// read tells the values at one site, or their range where many sites share a
+// column of dots.
 func (chainView) read(s *scene, x float64) string {
 	if s.Lattice == nil {
 		return ""
 	}
-	density := s.Lattice.Electrons.Density
-	i := min(max(int(math.Round(x)), 0), len(density)-1)
-	text := fmt.Sprintf("site %d  n %s", i, report.Digits(density[i], 1e-8, 5))
-	if p := s.Lattice.Electrons.BondOrder; i < len(p) {
-		text += "  p " + report.Digits(p[i], 1e-8, 5)
+	e := &s.Lattice.Electrons
+	from := min(max(int(math.Round(x)), 0), len(e.Density)-1)
+	to, text := from+1, fmt.Sprintf("site %d", from)
+	if w := s.window(); w.wide() && from >= w.from && from < w.to {
+		from, to = w.sites(w.of(float64(from)))
+		text = fmt.Sprintf("sites %d–%d", from, to-1)
 	}
-	for _, p := range s.patterns() {
-		text += fmt.Sprintf("  %s %s %s", p.name, report.Digits(p.values[i], 1e-9, 4), p.unit)
+	values := func(t *strand, grain float64, digits int) {
+		lo, hi := t.extent(from, to)
+		if lo > hi {
+			return
+		}
+		low, high := report.Digits(lo, grain, digits), report.Digits(hi, grain, digits)
+		if text += "  " + t.name + " " + low; high != low {
+			text += "…" + high
+		}
+		if t.unit != "" {
+			text += " " + t.unit
+		}
+	}
+	values(&strand{name: "n", values: e.Density}, 1e-8, 5)
+	values(&strand{name: "p", values: e.BondOrder}, 1e-8, 5)
+	patterns := s.patterns()
+	for i := range patterns {
+		values(&patterns[i], 1e-9, 4)
 	}
 	return text
 }

@@ -6,6 +6,7 @@ import (
 
 	"example.org/twokf/model/report"
 	"example.org/twokf/model/response"
+	"example.org/twokf/model/study"
 	"example.org/twokf/tui/plot"
 )
 
@@ -19,13 +20,33 @@ func (chiView) title(s *scene) string {
 	return fmt.Sprintf("χ(q, T) (1/%s) against q", s.Chain.Energy)
 }
 
-func (chiView) stale(p *picture) bool { return p.stale.response }
+func (chiView) stale(s *scene) bool { return s.stale.response || s.shownRing() != nil && s.stale.ring }
 
-func (chiView) abscissae(s *scene) []float64 {
-	if s.Response == nil {
-		return nil
+func (chiView) parts(s *scene) [3]any { return [3]any{s.Band, s.Response, s.shownRing()} }
+
+func (chiView) begin(s *scene) float64 {
+	if s.Band == nil {
+		return math.Pi / 2
 	}
-	return s.Response.Q
+	return s.Band.Ordering
+}
+
+func (chiView) place(s *scene, x float64, by int) (float64, bool) {
+	if s.Response == nil {
+		return 0, false
+	}
+	return among(s.Response.Q, x, by)
+}
+
+// manyWavevectors of a ring would hide the curve in a plot that is not enlarged.
+const manyWavevectors = 60
+
+// shownRing returns χ of the ring if it is to be drawn.
+func (s *scene) shownRing() *study.Ring {
+	if s.large || s.Chain.Sites < 2*manyWavevectors {
+		return s.Ring
+	}
+	return nil
 }
 
 func (chiView) draw(c *plot.Canvas, s *scene) {
@@ -49,9 +70,8 @@ func (chiView) draw(c *plot.Canvas, s *scene) {
 		}
 	}
 	s.markReading(c)
-	if s.Ring != nil && (s.large || len(s.Ring.Q) < 60) {
-		ring := values(s.Ring.Chi, func(x response.Static) float64 { return x.Site })
-		c.Points(s.Ring.Q, ring, inkFinite, plot.Heavy)
+	if ring := s.shownRing(); ring != nil {
+		c.Points(ring.Q, values(ring.Chi, func(x response.Static) float64 { return x.Site }), inkFinite, plot.Heavy)
 		s.label(c, "χ0 ring")
 	}
 	if showBond {

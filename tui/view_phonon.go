@@ -16,13 +16,22 @@ type phononView struct{}
 
 func (phononView) name() string { return "phonon" }
 
-func (phononView) stale(p *picture) bool { return p.stale.phonon }
+func (phononView) stale(s *scene) bool { return s.stale.phonon }
 
-func (phononView) abscissae(s *scene) []float64 {
-	if s.Phonon == nil {
-		return nil
+func (phononView) parts(s *scene) [3]any { return [3]any{s.Band, s.Phonon} }
+
+func (phononView) begin(s *scene) float64 {
+	if s.Band == nil {
+		return math.Pi / 2
 	}
-	return s.Phonon.Q
+	return s.Band.Ordering
+}
+
+func (phononView) place(s *scene, x float64, by int) (float64, bool) {
+	if s.Phonon == nil {
+		return 0, false
+	}
+	return among(s.Phonon.Q, x, by)
 }
 
 // masses says which branches of the chain have a frequency.

@@ -13,23 +13,49 @@ type window struct{ from, to int }
 // width is the number of sites that are shown, 0 for all.
 func (w window) width() int { return w.to - w.from }
 
-// fewestSites is the narrowest window onto the chain.
-const fewestSites = 8
+const (
+	// fewestSites is the narrowest window onto the chain.
+	fewestSites = 8
+	// manySites are more than anybody looks at one by one: beyond them a window
+	// is made narrower and wider in great steps.
+	manySites = 2000
+	greatStep = 8
+)
 
-// zoom shows factor times as many sites, about the one that is read or the
-// middle.
-func (b *Bench) zoom(factor float64) tea.Cmd {
-	n := b.chain.Sites
-	w := b.sites
-	if w.width() == 0 {
-		w = window{0, n}
+// narrow shows fewer sites, about the one that is read or the middle.
+func (b *Bench) narrow() tea.Cmd {
+	width := b.shownSites().width()
+	if width > manySites {
+		return b.zoom(width / greatStep)
 	}
-	width := int(math.Round(float64(w.width()) * factor))
-	width = min(max(width, min(fewestSites, n)), n)
+	return b.zoom((width + 1) / 2)
+}
+
+// widen shows more sites; it goes the way back that narrow came.
+func (b *Bench) widen() tea.Cmd {
+	width := b.shownSites().width()
+	if 2*width > manySites {
+		return b.zoom(width * greatStep)
+	}
+	return b.zoom(width * 2)
+}
+
+// shownSites is the window, that of the whole chain spelled out.
+func (b *Bench) shownSites() window {
+	if b.sites.width() == 0 {
+		return window{0, b.chain.Sites}
+	}
+	return b.sites
+}
+
+// zoom shows so many sites, about the one that is read or the middle.
+func (b *Bench) zoom(width int) tea.Cmd {
+	w := b.shownSites()
 	middle := (w.from + w.to) / 2
-	if b.reading.on && b.reading.view == chainIndex {
-		middle = int(b.reading.x)
+	if at := int(b.reading.x); b.reading.on && b.reading.view == chainIndex && at >= w.from && at < w.to {
+		middle = at
 	}
+	width = max(width, min(fewestSites, b.chain.Sites))
 	b.setWindow(middle-width/2, width)
 	return nil
 }
@@ -45,6 +71,7 @@ func (b *Bench) pan(direction int) tea.Cmd {
 	return nil
 }
 
+// setWindow shows so many sites of the present chain, as near to from as they are.
 func (b *Bench) setWindow(from, width int) {
 	n := b.chain.Sites
 	if width >= n {

@@ -10,7 +10,18 @@ import "math"
 type Axis struct {
 	Min, Max float64
 	Pi       bool   // ticks at multiples of π, as for wave vectors in 1/a
+	Whole    bool   // ticks at whole numbers, written in full, as for places that are counted
 	Name     string // written among the tick labels if there is room; x axis only
+}
+
+func (a Axis) numbering() numbering {
+	switch {
+	case a.Pi:
+		return multiplesOfPi
+	case a.Whole:
+		return wholes
+	}
+	return decimals
 }
 
 // bounds returns a finite range with lo < hi if there is one.

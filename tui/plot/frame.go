@@ -65,6 +65,14 @@ func (c *Canvas) Frame(x, y Axis, ink Ink) {
 	}
 }
 
+// Dots returns the size in dots of the part inside the frame, 0 before Frame.
+func (c *Canvas) Dots() (w, h int) {
+	if c.area.empty() {
+		return 0, 0
+	}
+	return c.area.right - c.area.left + 1, c.area.bottom - c.area.top + 1
+}
+
 // tickDots is the length of a tick in braille, and so the distance between a
 // ruler and the data.
 const tickDots = 2
@@ -81,7 +89,7 @@ func (c *Canvas) rulerDepth() int {
 // labels take; 0, and no ticks, if that were more than a third of the width.
 func (c *Canvas) yTicks(y Axis, lo, hi float64, rows int) int {
 	n := max(2, min(rows/2, 3+rows/6))
-	c.yt.place(lo, hi, n, y.Pi, c.charset == ASCII)
+	c.yt.place(lo, hi, n, y.numbering(), c.charset == ASCII)
 	gutter := c.yt.widest()
 	if c.charset == ASCII && gutter > 0 {
 		gutter++
@@ -102,7 +110,7 @@ const (
 func (c *Canvas) xTicks(x Axis, lo, hi float64) {
 	cols := (c.area.right - c.area.left + 1) / c.cw
 	for n := max(2, cols/labelEvery); n > 0; n = min(n, len(c.xt.list)) - 1 {
-		c.xt.place(lo, hi, n, x.Pi, c.charset == ASCII)
+		c.xt.place(lo, hi, n, x.numbering(), c.charset == ASCII)
 		if c.labelRow < 0 || c.xFit() {
 			return
 		}

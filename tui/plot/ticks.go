@@ -51,21 +51,34 @@ func multiples(lo, hi, step float64) (first, last float64) {
 	return first, last
 }
 
+// numbering is which multiples are ticks and how they are written.
+type numbering uint8
+
+const (
+	decimals numbering = iota
+	wholes             // whole numbers, in full
+	multiplesOfPi
+)
+
 // place fills t with at most n ticks of [lo, hi] and prefers as many of them
 // as possible. If that leaves a single one, it takes the next finer step, with
-// at most n+3. Steps are 1, 2 or 5 times a power of ten or, if pi is set, π
+// at most n+3. Steps are 1, 2 or 5 times a power of ten or, for multiples of π, π
 // times those and its halves, quarters and eighths. Anything but finite
 // lo < hi, or n < 1, gives no ticks.
-func (t *ticks) place(lo, hi float64, n int, pi, ascii bool) {
+func (t *ticks) place(lo, hi float64, n int, as numbering, ascii bool) {
 	t.list, t.text, t.ascii = t.list[:0], t.text[:0], ascii
+	least := minExponent
 	switch {
 	case !(lo < hi) || !finite(lo) || !finite(hi) || n < 1:
-	case pi:
+		return
+	case as == multiplesOfPi:
 		t.placePi(lo, hi, n)
-	default:
-		if m, e, ok := decimalStep(lo, hi, n, minExponent); ok {
-			t.decimal(lo, hi, m, e, "")
-		}
+		return
+	case as == wholes:
+		least = 0
+	}
+	if m, e, ok := decimalStep(lo, hi, n, least); ok {
+		t.decimal(lo, hi, m, e, as == wholes, "")
 	}
 }
 
@@ -88,7 +101,7 @@ func (t *ticks) placePi(lo, hi float64, n int) {
 			least = minExponent
 		}
 		if m, e, ok := decimalStep(ulo, uhi, n, least); ok {
-			t.decimal(ulo, uhi, m, e, t.pi())
+			t.decimal(ulo, uhi, m, e, false, t.pi())
 		}
 		for i := range t.list {
 			k := &t.list[i]
@@ -154,12 +167,13 @@ func shift(v float64, e int) float64 {
 	return v / math.Pow10(-e)
 }
 
-// decimal adds the multiples of m·10^e in [lo, hi], each label followed by unit.
-func (t *ticks) decimal(lo, hi float64, m, e int, unit string) {
+// decimal adds the multiples of m·10^e in [lo, hi], each label followed by unit;
+// large and small ones are written with an exponent unless they are wanted in full.
+func (t *ticks) decimal(lo, hi float64, m, e int, full bool, unit string) {
 	first, last := multiples(lo, hi, shift(float64(m), e))
 	most := int64(max(math.Abs(first), math.Abs(last))) * int64(m)
 	exponent := e + digits(most) - 1 // of the largest label
-	scientific := exponent >= 5 || exponent <= -5
+	scientific := !full && (exponent >= 5 || exponent <= -5)
 	for i := first; i <= last; i++ {
 		mantissa := int64(i) * int64(m)
 		t.add(min(max(shift(float64(mantissa), e), lo), hi))
