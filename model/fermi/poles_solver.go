@@ -12,7 +12,9 @@ type poleSolver struct {
 	gap   gapFinder
 	step  [2]poles // the last steps at T = 0, below and above an open shell
 	sweep sweep
+	order float64 // Σ_i ⟨c†_{i+2}c_i + h.c.⟩ of the last sum, when Next ≠ 0
 	warm  warm
+	share share
 
 	half   bool    // a balanced chain, half filled
 	middle float64 // then its chemical potential
@@ -124,19 +126,20 @@ func (p *poleSolver) sum(ctx context.Context, h *Hamiltonian, f *poles, mu, scal
 		omega += (a - mu) / 2
 	}
 	omega -= n * f.constant
-	p.sweep.order = 0
-	p.sweep.symmetric = p.half && mu == p.middle
+	p.order = 0
 	for first := 0; first < len(f.weight); first += width {
 		if err := context.Cause(ctx); err != nil {
 			return 0, err
 		}
-		p.sweep.load(f, first, mu, scale/2)
-		p.sweep.add(h, density, bond)
-		for l := range width {
-			if first+l < len(f.weight) {
-				omega -= f.weight[first+l] / 2 * p.sweep.log[l]
-			}
+		now := lot{h: h, poles: f, first: first, mu: mu, scale: scale / 2, symmetric: p.half && mu == p.middle}
+		if next := first + width; len(h.Site) >= shareable && next < len(f.weight) {
+			omega += p.two(now, density, bond)
+			first = next
+			continue
 		}
+		part, order := now.add(&p.sweep, density, bond)
+		omega += part
+		p.order += order
 	}
 	if math.IsNaN(omega) || math.IsInf(omega, 0) {
 		return 0, fmt.Errorf("%w: energies of order %g are too large or too small to be summed", errUnresolved, f.outer)

@@ -39,6 +39,10 @@ type Solver struct {
 	// and energies need: for the inside of a self-consistent loop.
 	RoughEdges bool
 
+	// Jobs is how many cores the sums over poles of long chains may use; 0 or 1
+	// means one. The answer is the same to the last bit.
+	Jobs int
+
 	dense  dense
 	poles  poleSolver
 	waves  waves
@@ -90,6 +94,7 @@ func (s *Solver) Solve(ctx context.Context, h *Hamiltonian, occ Occupation, st *
 	}
 	if s.choose(len(h.Site), occ.Temperature) == Poles {
 		st.Method = Poles.String()
+		s.poles.share.jobs = s.Jobs
 		err := s.poles.solve(ctx, h, occ, st, s.RoughEdges)
 		if !errors.Is(err, errUnresolved) || len(h.Site) > largestDense {
 			return err

@@ -106,7 +106,7 @@ func (p *poleSolver) try(ctx context.Context, h *Hamiltonian, mu, spin float64, 
 	clear(t.bond)
 	var err error
 	t.omega, err = p.sum(ctx, h, f, mu, spin, t.density, t.bond)
-	t.order = p.sweep.order
+	t.order = p.order
 	t.excess = -spin * key.perSpin
 	for _, n := range t.density {
 		t.excess += n

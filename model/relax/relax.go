@@ -130,6 +130,9 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 	for len(walkers) < min(jobs, len(starts)) {
 		walkers = append(walkers, newWalker(p))
 	}
+	if len(walkers) == 1 {
+		w.solver.Jobs = set.Jobs // the cores that no other start needs
+	}
 	ends, err := race(ctx, walkers, starts, set)
 	if err != nil {
 		return nil, err
