@@ -4,6 +4,8 @@ import (
 	"bytes"
 	"context"
 	"fmt"
+	"os"
+	"slices"
 	"strings"
 	"testing"
 	"testing/synctest"
@@ -15,7 +17,9 @@ import (
 	"github.com/muesli/termenv"
 	"pgregory.net/rapid"
 
+	"example.org/twokf/model"
 	"example.org/twokf/model/study"
+	"example.org/twokf/presets"
 	"example.org/twokf/tui/plot"
 )
 
@@ -121,18 +125,51 @@ func TestATurnOfAKnobSendsLittle(t *testing.T) {
 	}
 }
 
-// BenchmarkTurnBytes reports what one turn of the temperature sends.
-func BenchmarkTurnBytes(b *testing.B) {
-	_, screens := turns(b)
-	var n int
-	for b.Loop() {
-		n = 0
-		for i, after := range screens[1:] {
-			n += sent(screens[i], after, 120)
+// everyTurn returns what one turn of each numeric knob of each ready-made chain
+// sends, in ascending order.
+func everyTurn(t testing.TB) (bytes []int) {
+	colours := termenv.ANSI256
+	for _, p := range presets.List() {
+		for i, k := range knobs {
+			if k.Kind == model.Word || absent(k, p.Chain) || k.Step(p.Chain, +1, false) == p.Chain {
+				continue
+			}
+			b := openedWith(t, Settings{Chain: p.Chain, From: p.Name, Profile: &colours}, 120, 36)
+			answer(t, b)
+			b.knob = i
+			b.message = ""
+			b.Update(nil)
+			before := b.View()
+			press(t, b, "up")
+			answer(t, b)
+			bytes = append(bytes, sent(before, b.View(), 120))
 		}
 	}
-	b.ReportMetric(float64(n)/float64(len(screens)-1), "sent-B/turn")
-	b.ReportMetric(float64(len(screens[0])), "full-B")
+	slices.Sort(bytes)
+	return bytes
+}
+
+func TestHalfOfAllTurnsSendLittle(t *testing.T) {
+	if os.Getenv("TWOKF_LONG") != "1" {
+		t.Skip("more than a hundred studies")
+	}
+	const most = 4000
+	bytes := everyTurn(t)
+	if median := bytes[len(bytes)/2]; median > most || len(bytes) < 100 {
+		t.Errorf("the median of %d turns sends %d bytes, more than %d", len(bytes), median, most)
+	}
+}
+
+// BenchmarkTurnBytes reports what the turns of all knobs send.
+func BenchmarkTurnBytes(b *testing.B) {
+	var bytes []int
+	for b.Loop() {
+		bytes = everyTurn(b)
+	}
+	b.ReportMetric(0, "ns/op")
+	b.ReportMetric(float64(bytes[len(bytes)/2]), "median-B")
+	b.ReportMetric(float64(bytes[len(bytes)*9/10]), "nine-of-ten-B")
+	b.ReportMetric(float64(len(bytes)), "turns")
 }
 
 // BenchmarkView draws the screen after a turn: all four plots anew.

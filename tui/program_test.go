@@ -418,6 +418,7 @@ func TestInterrupt(t *testing.T) {
 	}{
 		{"the susceptibility of a huge ring", []string{"solve", "-", "--set", "sites=2000000", "--json"}, string(long), 200 * time.Millisecond},
 		{"a long relaxation", []string{"solve", "-", "--set", "sites=200000", "--jobs", "1"}, string(long), 1500 * time.Millisecond},
+		{"a million sites", []string{"solve", "polyene", "--set", "sites=1000000", "--jobs", "1"}, " ", 500 * time.Millisecond},
 		{"the wait for standard input", []string{"solve", "-"}, "", 200 * time.Millisecond},
 		{"the wait for standard input before the bench", []string{"-"}, "", 200 * time.Millisecond},
 	} {
@@ -438,6 +439,10 @@ func TestInterrupt(t *testing.T) {
 		}
 	}
 }
+
+// prompt is how soon a run must end after a signal: a twentieth of a second is
+// usual.
+const prompt = 5 * time.Second
 
 // interrupted runs the program, sends it a signal after a while and waits for its
 // end; the exit code is -1 if the signal killed it.
@@ -471,7 +476,7 @@ func interrupted(t *testing.T, args []string, input string, signal os.Signal, wa
 	}()
 	select {
 	case <-end:
-	case <-time.After(patience):
+	case <-time.After(prompt):
 		_ = cmd.Process.Kill()
 		<-end
 		t.Fatalf("%q goes on after the signal", args)

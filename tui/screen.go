@@ -24,6 +24,9 @@ type screen struct {
 	canvas []*plot.Canvas
 	drawn  []drawing
 	sketch sketch
+
+	width         int      // of the rows below
+	raw, finished []string // the rows of the latest frame, as composed and as shown
 }
 
 // spot is a knob's place on the screen.
@@ -59,14 +62,29 @@ func (b *Bench) rows() []string {
 	default:
 		rows = b.benchRows()
 	}
-	rows = padded(rows, b.h)[:b.h]
+	return b.finish(padded(rows, b.h)[:b.h])
+}
+
+// finish cuts rows to the window and makes them lean; most are those of the
+// frame before, which need no second look.
+func (b *Bench) finish(rows []string) []string {
+	s := &b.screen
+	if s.width != b.w {
+		s.width, s.raw = b.w, nil
+	}
+	finished := make([]string, len(rows))
 	for i, r := range rows {
+		if i < len(s.raw) && s.raw[i] == r {
+			finished[i] = s.finished[i]
+			continue
+		}
 		if ansi.StringWidth(r) > b.w {
 			r = ansi.Truncate(r, b.w, "")
 		}
-		rows[i] = lean(r)
+		finished[i] = lean(r)
 	}
-	return rows
+	s.raw, s.finished = rows, finished
+	return finished
 }
 
 // textRows returns the rows of the readout and of the doubts: as many as the

@@ -27,6 +27,7 @@ func (b *Bench) spell(s string) string {
 // that change how their neighbours are shown or how wide they are.
 func harmless(r rune) rune {
 	switch {
+	case r >= ' ' && r <= '~': // most are, and need no table
 	case unicode.IsControl(r), unicode.In(r, unicode.Zl, unicode.Zp):
 		return ' '
 	case unicode.In(r, unicode.Cf, unicode.Variation_Selector):
