@@ -4,11 +4,11 @@ import (
 	"context"
 	"fmt"
 	"math"
+	"sync"
 )
 
 // warm is what is kept for electrons at T > 0.
 type warm struct {
-	made   []madePoles // latest last
 	trials [2]trial
 
 	key   warmKey // what the following belong to
@@ -96,7 +96,7 @@ func (p *poleSolver) firstSlope(excess float64, key warmKey, st *State) float64 
 
 // try stores what the electrons do at mu.
 func (p *poleSolver) try(ctx context.Context, h *Hamiltonian, mu, spin float64, key warmKey, t *trial) error {
-	f := p.warm.polesFor(key.temperature, max(p.gap.hi-mu, mu-p.gap.lo))
+	f := polesFor(key.temperature, max(p.gap.hi-mu, mu-p.gap.lo))
 	if f == nil {
 		return fmt.Errorf("%w: temperature %g cannot be resolved in a band of width %g", errUnresolved, key.temperature, p.gap.hi-p.gap.lo)
 	}
@@ -115,42 +115,53 @@ func (p *poleSolver) try(ctx context.Context, h *Hamiltonian, mu, spin float64, 
 	return err
 }
 
-// madePoles are poles that have been made for a temperature and a range.
-type madePoles struct {
-	poles
-	temperature, reach float64
-}
-
-const (
-	// roomy is the ratio of neighbouring ranges for which thermal poles are made:
-	// ranges are rounded up to a power of it times T, so that the same poles serve
-	// similar chains and depend on nothing but T and the rounded range.
-	roomy = 1.1
-	// keptPoles is how many ranges and temperatures are kept: making poles takes
-	// milliseconds.
-	keptPoles = 4
-)
+// roomy is the ratio of neighbouring ranges for which thermal poles are made:
+// ranges are rounded up to a power of it times T, so that the same poles serve
+// similar chains and depend on nothing but T and the rounded range.
+const roomy = 1.1
 
 // polesFor returns poles that are good for |ε − μ| ≤ M at the temperature, or
-// nil if there are none.
-func (w *warm) polesFor(temperature, M float64) *poles {
+// nil if there are none. They are not to be changed.
+func polesFor(temperature, M float64) *poles {
 	reach := temperature * math.Pow(roomy, math.Ceil(math.Log(max(M/temperature, 1))/math.Log(roomy)))
-	reach = max(reach, M)
-	for i := range w.made {
-		if m := &w.made[i]; m.temperature == temperature && m.reach == reach {
-			return &m.poles
-		}
+	return thermal.get(thermalKey{temperature, max(reach, M)})
+}
+
+// thermal keeps the poles of the last few temperatures and ranges for all
+// solvers: making them takes milliseconds, and they depend on their key alone.
+var thermal thermalCache
+
+type thermalKey struct{ temperature, reach float64 }
+
+type thermalCache struct {
+	lock sync.Mutex
+	keys []thermalKey // latest last
+	made map[thermalKey]*poles
+}
+
+// keptPoles is how many are kept, some kB each.
+const keptPoles = 32
+
+func (c *thermalCache) get(key thermalKey) *poles {
+	c.lock.Lock()
+	defer c.lock.Unlock() // held while they are made: another solver wants the same
+	if f, ok := c.made[key]; ok {
+		return f
 	}
-	if len(w.made) == keptPoles {
-		w.made = append(w.made[:0], w.made[1:]...)
+	f := new(poles)
+	if !f.fermiDirac(key.temperature, key.reach, poleTolerance) {
+		f = nil
 	}
-	var m madePoles
-	if !m.fermiDirac(temperature, reach, poleTolerance) {
-		return nil
+	if c.made == nil {
+		c.made = make(map[thermalKey]*poles)
 	}
-	m.temperature, m.reach = temperature, reach
-	w.made = append(w.made, m)
-	return &w.made[len(w.made)-1].poles
+	if len(c.keys) == keptPoles {
+		delete(c.made, c.keys[0])
+		c.keys = append(c.keys[:0], c.keys[1:]...)
+	}
+	c.keys = append(c.keys, key)
+	c.made[key] = f
+	return f
 }
 
 // blend stores the state at the chemical potential where the excess, taken as

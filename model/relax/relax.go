@@ -84,6 +84,10 @@ const (
 	// tieEnergy is the free energy per site, in units of the band scale, below
 	// which two ends count as the same energy: the electron solver's rounding.
 	tieEnergy = 1e-12
+	// scoutGain, likewise, is by how much the free energy per site of a chain of a
+	// thousand sites may lie below that of a long one and be the same: a kink
+	// left over on a million sites is more.
+	scoutGain = 1e-7
 	// saddleCurvature, in units of the bare spring, is well above the
 	// finite-difference noise of the curvature test and far below any real
 	// instability (−λ times a logarithm).
@@ -114,14 +118,26 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 		return w.lattice(ctx, uniform, uniform, set.Tolerance)
 	}
 
-	starts := slices.Clone(set.Starts)
+	starts, scouted := slices.Clone(set.Starts), math.Inf(1)
 	if starts == nil {
-		if starts, err = likelySeeds(ctx, c, set); err != nil {
+		if starts, scouted, err = likelySeeds(ctx, c, set); err != nil {
 			return nil, err
 		}
 	}
+	var ends []*end
 	if prev := set.Previous; prev != nil && p.fits(prev) {
-		starts = append([]Seed{{Name: "previous", Stretch: prev.Stretch, SiteMode: prev.SiteMode}}, starts...)
+		earlier := Seed{Name: "previous", Stretch: prev.Stretch, SiteMode: prev.SiteMode}
+		if math.IsInf(scouted, 1) {
+			starts = append([]Seed{earlier}, starts...)
+		} else { // fresh starts on a long chain only if they have something to gain
+			w.solver.Jobs = set.Jobs
+			if ends, err = race(ctx, walkers, []Seed{earlier}, set); err != nil {
+				return nil, err
+			}
+			if e := ends[0]; e.residual <= set.Tolerance && e.free/float64(c.Sites) <= scouted+scoutGain*p.scale() {
+				starts = nil
+			}
+		}
 	}
 	jobs := set.Jobs
 	if p.size() > manyCoordinates {
@@ -130,13 +146,15 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 	for len(walkers) < min(jobs, len(starts)) {
 		walkers = append(walkers, newWalker(p))
 	}
+	w.solver.Jobs = 1
 	if len(walkers) == 1 {
 		w.solver.Jobs = set.Jobs // the cores that no other start needs
 	}
-	ends, err := race(ctx, walkers, starts, set)
+	fresh, err := race(ctx, walkers, starts, set)
 	if err != nil {
 		return nil, err
 	}
+	ends = append(ends, fresh...)
 
 	best := p.lowest(append(ends, uniform))
 	if err := w.testCurvature(ctx, best); err != nil {

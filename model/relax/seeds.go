@@ -69,23 +69,27 @@ const (
 // likelySeeds returns the starts that are worth the while. On a long chain that is
 // the one that wins on a shorter chain of the same filling: what a chain of a
 // thousand sites prefers, by some energy per site, so does a longer one.
-func likelySeeds(ctx context.Context, c model.Chain, set Settings) ([]Seed, error) {
+//
+// The second result is the free energy per site that it ended with, +Inf where
+// nothing was scouted.
+func likelySeeds(ctx context.Context, c model.Chain, set Settings) ([]Seed, float64, error) {
 	if c.Sites <= longestUnscouted {
-		return Seeds(c), nil
+		return Seeds(c), math.Inf(1), nil
 	}
 	all := Seeds(c)
 	short := shorter(c)
 	candidates := slices.DeleteFunc(Seeds(short), func(s Seed) bool { return !slices.ContainsFunc(all, s.like) })
 	l, err := Run(ctx, short, Settings{Starts: candidates, Tolerance: set.Tolerance, MaxIterations: set.MaxIterations, Jobs: set.Jobs})
 	if err != nil {
-		return nil, err
+		return nil, 0, err
 	}
+	energy := l.FreeEnergy / float64(short.Sites)
 	for i, s := range all {
 		if s.Name == l.Start {
-			return []Seed{all[i]}, nil
+			return []Seed{all[i]}, energy, nil
 		}
 	}
-	return all, nil // it stayed undistorted, or left a saddle: no seed is better than another
+	return all, energy, nil // it stayed undistorted, or left a saddle: no seed is better than another
 }
 
 // shorter returns a chain of about scoutSites that comes closest to c's number

@@ -87,6 +87,13 @@ func amplitude(x []float64, q float64, sites int) float64 {
 	return a
 }
 
+// On chains of more than manySites each level costs so much that just fewLevels
+// are sampled.
+const (
+	manySites = 5_000
+	fewLevels = 64
+)
+
 // plotted is how finely sampled levels are found, as a part of the range of all:
 // half a dot of the tallest plot.
 const plotted = 5e-4
@@ -105,6 +112,9 @@ var levelStage = stage{
 		out := &Levels{}
 		switch few := in.settings.Levels; {
 		case few > 0 && c.Sites > few:
+			if c.Sites > manySites {
+				few = min(few, fewLevels)
+			}
 			numbers := levelSample(c, few)
 			lo, hi := h.Bounds()
 			out.Energy, err = in.solver.SampleLevels(ctx, nil, h, numbers, plotted*(hi-lo))
