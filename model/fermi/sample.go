@@ -2,7 +2,9 @@ package fermi
 
 import (
 	"context"
+	"errors"
 	"fmt"
+	"runtime/debug"
 	"slices"
 )
 
@@ -18,7 +20,28 @@ func (s *Solver) SampleLevels(ctx context.Context, dst []float64, h *Hamiltonian
 	if !slices.IsSorted(numbers) || len(numbers) > 0 && (numbers[0] < 0 || numbers[len(numbers)-1] >= len(h.Site)) {
 		panic(fmt.Sprintf("fermi: numbers of levels must ascend within 0..%d", len(h.Site)-1))
 	}
-	g := &s.poles.gap
+	dst = resize(dst, len(numbers))
+	// two halves, whatever the number of cores, so that the answer is the same
+	half := len(numbers) / 2
+	first := func() error { return s.poles.gap.sample(ctx, dst[:half], h, numbers[:half], tolerance) }
+	second := func() error { return s.second.sample(ctx, dst[half:], h, numbers[half:], tolerance) }
+	if s.Jobs > 1 && len(h.Site) >= shareable {
+		done := make(chan error, 1)
+		go func() {
+			defer func() {
+				if r := recover(); r != nil {
+					done <- fmt.Errorf("fermi: %v\n%s", r, debug.Stack())
+				}
+			}()
+			done <- second()
+		}()
+		return dst, errors.Join(first(), <-done)
+	}
+	return dst, errors.Join(first(), second())
+}
+
+// sample is SampleLevels for one core.
+func (g *gapFinder) sample(ctx context.Context, dst []float64, h *Hamiltonian, numbers []int, tolerance float64) error {
 	g.reset(h)
 	tolerance = max(tolerance, g.sharp())
 	brackets := make([]bracket, len(numbers))
@@ -29,7 +52,7 @@ func (s *Solver) SampleLevels(ctx context.Context, dst []float64, h *Hamiltonian
 	var counts [lanes]int
 	for {
 		if err := context.Cause(ctx); err != nil {
-			return nil, err
+			return err
 		}
 		wide := 0
 		for i := range brackets { // the midpoints of different brackets, as many as are counted at once
@@ -55,14 +78,13 @@ func (s *Solver) SampleLevels(ctx context.Context, dst []float64, h *Hamiltonian
 		for i := range brackets {
 			for l := range wide {
 				if brackets[i].learn(energies[l], counts[l]); brackets[i].hi < brackets[i].lo {
-					return nil, fmt.Errorf("fermi: the counts of levels near %g contradict each other", energies[l])
+					return fmt.Errorf("fermi: the counts of levels near %g contradict each other", energies[l])
 				}
 			}
 		}
 	}
-	dst = resize(dst, len(numbers))
 	for i := range brackets {
 		dst[i] = brackets[i].middle()
 	}
-	return dst, nil
+	return nil
 }

@@ -39,13 +39,14 @@ type Solver struct {
 	// and energies need: for the inside of a self-consistent loop.
 	RoughEdges bool
 
-	// Jobs is how many cores the sums over poles of long chains may use; 0 or 1
+	// Jobs is how many cores the sums over poles and the counts of long chains may use; 0 or 1
 	// means one. The answer is the same to the last bit.
 	Jobs int
 
 	dense  dense
 	poles  poleSolver
 	waves  waves
+	second gapFinder // for the other half of a sample of levels
 	levels tridiagonal
 }
 

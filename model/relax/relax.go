@@ -128,6 +128,9 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 	if prev := set.Previous; prev != nil && p.fits(prev) {
 		earlier := Seed{Name: "previous", Stretch: prev.Stretch, SiteMode: prev.SiteMode}
 		if math.IsInf(scouted, 1) {
+			if set.Starts == nil { // at random has been tried when the chain was new
+				starts = slices.DeleteFunc(starts, func(s Seed) bool { return s.Name == atRandom })
+			}
 			starts = append([]Seed{earlier}, starts...)
 		} else { // fresh starts on a long chain only if they have something to gain
 			w.solver.Jobs = set.Jobs

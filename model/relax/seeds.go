@@ -16,6 +16,9 @@ type Seed struct {
 	SiteMode []float64 // q_i, as Lattice.SiteMode
 }
 
+// atRandom is the name of the random start.
+const atRandom = "random"
+
 const (
 	// seedGap is the half gap that a seed opens, in units of the hopping: large
 	// enough to be past the flat top of the energy, small enough that no hopping
@@ -54,7 +57,7 @@ func Seeds(c model.Chain) []Seed {
 		seeds = append(seeds, s.dented("commensurate", near))
 	}
 	if c.Sites <= longestRandom {
-		seeds = append(seeds, s.random("random"))
+		seeds = append(seeds, s.random(atRandom))
 	}
 	return seeds
 }

@@ -87,11 +87,11 @@ func amplitude(x []float64, q float64, sites int) float64 {
 	return a
 }
 
-// On chains of more than manySites each level costs so much that just fewLevels
-// are sampled.
+// On very long chains each level costs so much that fewer are sampled: levels
+// times sites stay below manyCounts, down to fewest levels.
 const (
-	manySites = 5_000
-	fewLevels = 64
+	manyCounts = 1_000_000
+	fewest     = 32
 )
 
 // plotted is how finely sampled levels are found, as a part of the range of all:
@@ -109,12 +109,11 @@ var levelStage = stage{
 			return nil
 		}
 		h := relax.Hamiltonian(c, in.portrait.Lattice.Lattice)
+		in.solver.Jobs = in.settings.Jobs
 		out := &Levels{}
 		switch few := in.settings.Levels; {
 		case few > 0 && c.Sites > few:
-			if c.Sites > manySites {
-				few = min(few, fewLevels)
-			}
+			few = min(few, max(fewest, manyCounts/c.Sites))
 			numbers := levelSample(c, few)
 			lo, hi := h.Bounds()
 			out.Energy, err = in.solver.SampleLevels(ctx, nil, h, numbers, plotted*(hi-lo))
