@@ -67,6 +67,9 @@ func (bandView) draw(c *plot.Canvas, s *scene) {
 // bandGrain, times the hopping, is what counts as no energy at all.
 const bandGrain = 1e-8
 
+// edgeGrain, likewise, is how near to a gap edge a level is the edge itself.
+const edgeGrain = 1e-7
+
 func (bandView) read(s *scene, x float64) string {
 	if s.Band == nil {
 		return ""
@@ -80,18 +83,24 @@ func (bandView) read(s *scene, x float64) string {
 		for j, k := range s.Levels.K {
 			d := math.Abs(k - x)
 			if s.Levels.Energy[j] <= s.Lattice.Electrons.ChemicalPotential {
-				if below < 0 || d < math.Abs(s.Levels.K[below]-x) {
+				if below < 0 || d <= math.Abs(s.Levels.K[below]-x) { // of two at one k the upper
 					below = j
 				}
 			} else if above < 0 || d < math.Abs(s.Levels.K[above]-x) {
 				above = j
 			}
 		}
+		level := func(e float64) string { // the gap edges are known better than a sample
+			if off := min(math.Abs(e-s.Lattice.Electrons.Highest), math.Abs(e-s.Lattice.Electrons.Lowest)); off < edgeGrain*s.Chain.Hopping {
+				return digits(e)
+			}
+			return report.Digits(e, max(s.Levels.Tolerance, bandGrain*s.Chain.Hopping), 4)
+		}
 		if below >= 0 {
-			text += fmt.Sprintf("  level below EF %s", digits(s.Levels.Energy[below]))
+			text += fmt.Sprintf("  level below EF %s", level(s.Levels.Energy[below]))
 		}
 		if above >= 0 {
-			text += fmt.Sprintf(", above %s", digits(s.Levels.Energy[above]))
+			text += fmt.Sprintf(", above %s", level(s.Levels.Energy[above]))
 		}
 	}
 	return text + " " + s.Chain.Energy.String()

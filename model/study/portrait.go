@@ -104,6 +104,7 @@ type Lattice struct {
 
 // Levels are the one-electron levels of the relaxed chain.
 type Levels struct {
-	Energy []float64 // ascending
-	K      []float64 // the place of each level in the band of the undistorted chain, 0..π
+	Energy    []float64 // ascending
+	K         []float64 // the place of each level in the band of the undistorted chain, 0..π
+	Tolerance float64   // of each energy; 0: exact but for rounding
 }
