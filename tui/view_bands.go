@@ -67,6 +67,9 @@ func (bandView) draw(c *plot.Canvas, s *scene) {
 // bandGrain, times the hopping, is what counts as no energy at all.
 const bandGrain = 1e-8
 
+// sameK is the difference up to which two wave vectors are one.
+const sameK = 1e-6
+
 // edgeGrain, likewise, is how near to a gap edge a level is the edge itself.
 const edgeGrain = 1e-7
 
@@ -78,15 +81,23 @@ func (bandView) read(s *scene, x float64) string {
 	digits := func(e float64) string { return report.Digits(e, bandGrain*s.Chain.Hopping, 4) }
 	text := fmt.Sprintf("k %s  ε %s", inPi(s.Band.K[i]), digits(s.Band.Energy[i]))
 	if s.Levels != nil && s.Lattice != nil {
-		// the two levels nearest to this k on either side of the Fermi level
+		// the two levels nearest to this k on either side of the Fermi level; of
+		// two at one k (±k) that nearer to the Fermi level
+		fermi := s.Lattice.Electrons.ChemicalPotential
+		nearer := func(j, than int) bool {
+			if than < 0 {
+				return true
+			}
+			d := math.Abs(s.Levels.K[j]-x) - math.Abs(s.Levels.K[than]-x)
+			return d < -sameK || d < sameK && math.Abs(s.Levels.Energy[j]-fermi) < math.Abs(s.Levels.Energy[than]-fermi)
+		}
 		below, above := -1, -1
-		for j, k := range s.Levels.K {
-			d := math.Abs(k - x)
-			if s.Levels.Energy[j] <= s.Lattice.Electrons.ChemicalPotential {
-				if below < 0 || d <= math.Abs(s.Levels.K[below]-x) { // of two at one k the upper
+		for j, e := range s.Levels.Energy {
+			if e <= fermi {
+				if nearer(j, below) {
 					below = j
 				}
-			} else if above < 0 || d < math.Abs(s.Levels.K[above]-x) {
+			} else if nearer(j, above) {
 				above = j
 			}
 		}
