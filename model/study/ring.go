@@ -45,6 +45,7 @@ var ringStage = stage{
 		if err != nil {
 			return err
 		}
+		ring.Jobs = in.settings.Jobs
 		step := 2 * math.Pi / float64(c.Sites)
 		shown := in.settings.Levels > 0
 		out := &Ring{complete: !shown}
