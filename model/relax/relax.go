@@ -62,9 +62,9 @@ type Attempt struct {
 type Settings struct {
 	Tolerance     float64        // on Residual; 0 means 1e-9, about ten times what the electrons are solved to
 	MaxIterations int            // per start; 0 means 1000
-	Starts        []Seed         // nil means Seeds(c)
-	Previous      *Lattice       // tried as one more start when its shape fits
-	Jobs          int            // starts relaxed side by side; 0 means one after the other
+	Starts        []Seed         // nil means those of Seeds(c) that are worth it, see likelySeeds
+	Previous      *Lattice       // tried first when its shape fits; it stands in for the random start
+	Jobs          int            // cores to use, for starts side by side or for the sums of one; 0 means one
 	Progress      func(Progress) // if not nil, called now and then, never concurrently
 }
 
@@ -134,10 +134,13 @@ func Run(ctx context.Context, c model.Chain, set Settings) (*Lattice, error) {
 			starts = append([]Seed{earlier}, starts...)
 		} else { // fresh starts on a long chain only if they have something to gain
 			w.solver.Jobs = set.Jobs
-			if ends, err = race(ctx, walkers, []Seed{earlier}, set); err != nil {
+			ends, err = race(ctx, walkers, []Seed{earlier}, set)
+			if ctx.Err() != nil {
 				return nil, err
 			}
-			if e := ends[0]; e.residual <= set.Tolerance && e.free/float64(c.Sites) <= scouted+scoutGain*p.scale() {
+			if err != nil { // its electrons cannot be solved here; a fresh start's may be
+				ends = nil
+			} else if e := ends[0]; e.residual <= set.Tolerance && e.free/float64(c.Sites) <= scouted+scoutGain*p.scale() {
 				starts = nil
 			}
 		}

@@ -37,7 +37,8 @@ const (
 // Seeds returns the starts of a chain: 2kF patterns of two phases, a
 // neighbouring commensurate pattern with a dent (where an extra electron makes
 // a polaron or a kink), one branch at a time where both are coupled, and, for
-// chains that are not long, a random pattern. The wave vector is that of the electrons on the chain.
+// chains that are not long, a random pattern. The wave vector is that of the
+// electrons on the chain.
 func Seeds(c model.Chain) []Seed {
 	n, _ := c.Count()
 	if c.Sites < 2 || n == 0 || n == c.Spin*c.Sites {
@@ -83,8 +84,11 @@ func likelySeeds(ctx context.Context, c model.Chain, set Settings) ([]Seed, floa
 	short := shorter(c)
 	candidates := slices.DeleteFunc(Seeds(short), func(s Seed) bool { return !slices.ContainsFunc(all, s.like) })
 	l, err := Run(ctx, short, Settings{Starts: candidates, Tolerance: set.Tolerance, MaxIterations: set.MaxIterations, Jobs: set.Jobs})
-	if err != nil {
+	if ctx.Err() != nil {
 		return nil, 0, err
+	}
+	if err != nil { // the short chain tells nothing
+		return all, math.Inf(1), nil
 	}
 	energy := l.FreeEnergy / float64(short.Sites)
 	for i, s := range all {
@@ -108,7 +112,7 @@ func shorter(c model.Chain) model.Chain {
 		}
 	}
 	c.ByNumber, c.Filling = true, 0
-	c.Sites, c.Electrons = best, c.Spin*int(math.Round(filling*float64(best)))
+	c.Sites, c.Electrons = best, int(math.Round(filling*float64(c.Spin*best)))
 	return c
 }
 
